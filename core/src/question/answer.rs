@@ -1,0 +1,202 @@
+//! What comes back: the decision first, then everything it rests on.
+
+use super::figure::Figure;
+use super::{Asked, Question};
+use serde::Serialize;
+
+/// The answer to one entry.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Answer {
+    /// Id of the question.
+    pub question: &'static str,
+    /// What was wrong with the entry, field by field, in words that say what to do.
+    pub problems: Vec<Problem>,
+    /// The decision.
+    pub verdict: Verdict,
+    /// Numbers, by name.
+    pub results: Vec<Outcome>,
+    /// Tables, by name.
+    pub tables: Vec<Table>,
+    /// Picture, as data.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub figure: Option<Figure>,
+    /// The formulas with the numbers in them, line by line, to be checked with a pencil.
+    pub working: Vec<String>,
+    /// What else to know.
+    pub notes: Vec<Note>,
+    /// Where formulas and figures come from.
+    pub sources: Vec<&'static str>,
+    /// How each field was read.
+    pub read: Vec<Read>,
+    /// What was asked, self-contained, with units and defaults: a link, a record, a row of a test.
+    pub entry: String,
+}
+
+/// Something wrong with one field.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Problem {
+    /// Name of the field.
+    pub field: &'static str,
+    /// What to do.
+    pub message: String,
+    /// What may have been meant.
+    pub fixes: Vec<Fix>,
+}
+
+/// An entry that may have been meant: one tap puts it in.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Fix {
+    /// Words on the key: "It is m: k = 0.14".
+    pub label: String,
+    /// Field to set.
+    pub field: &'static str,
+    /// Its new text, without unit.
+    pub text: String,
+    /// Its new unit, empty for none.
+    pub unit: &'static str,
+}
+
+/// The decision: words and shape, never colour alone.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Verdict {
+    /// What to do, in two to four words: "Take it", "Shorten to".
+    pub word: &'static str,
+    /// The one number that goes with the word, with its unit; may be empty.
+    pub number: String,
+    /// The reason and the distance at which the answer flips, in one or two sentences.
+    pub sentence: String,
+    /// How it stands to the limit.
+    pub state: State,
+}
+
+/// How a decision stands to its limit.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+#[serde(rename_all = "snake_case")]
+pub enum State {
+    /// Bias and doubt together are inside the limit.
+    Within,
+    /// The limit lies inside the doubt.
+    Doubtful,
+    /// Outside the limit, whatever the doubt hides.
+    Beyond,
+    /// Not enough is known.
+    Unknown,
+}
+
+/// A number that came out.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Outcome {
+    /// Name at the boundary.
+    pub name: &'static str,
+    /// Name on the page.
+    pub label: &'static str,
+    /// SI value; absent where the text says why there is none.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub value: Option<f64>,
+    /// The value as a person reads it, without unit, or words where there is no value.
+    pub text: String,
+    /// Unit of `text`, empty for words.
+    pub unit: &'static str,
+    /// 95 % half-width.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub doubt: Option<Doubt>,
+    /// What the number does, in words, with its sign.
+    pub meaning: String,
+}
+
+/// Doubt of a result: a 95 % half-width.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Doubt {
+    /// SI value.
+    pub value: f64,
+    /// As shown, in the unit of its result: "± 0.9", or "from −3.1 to +0.8" where it is lopsided.
+    pub text: String,
+}
+
+/// A table: every cell is text, ready to be read.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Table {
+    /// Name at the boundary.
+    pub name: &'static str,
+    /// Heading.
+    pub caption: String,
+    /// Column headings, units in them.
+    pub columns: Vec<String>,
+    /// Rows; the first cell of each is its heading.
+    pub rows: Vec<Vec<String>>,
+}
+
+/// Something else to know.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Note {
+    /// How much it matters.
+    pub level: Level,
+    /// What to know, or what is asked back.
+    pub text: String,
+    /// Keys that answer what is asked back; empty where nothing is.
+    pub fixes: Vec<Fix>,
+}
+
+/// How much a note matters.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+#[serde(rename_all = "snake_case")]
+pub enum Level {
+    /// Good to know.
+    Note,
+    /// Something may be wrong or dangerous.
+    Caution,
+}
+
+/// How a field was read.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Read {
+    /// Name of the field.
+    pub field: &'static str,
+    /// What was typed, without its unit; empty where nothing was.
+    pub text: String,
+    /// Unit it was read in, empty for none.
+    pub unit: &'static str,
+    /// The same in everyday words, or in SI where another unit was typed: "about 4 minutes' walk".
+    pub echo: String,
+    /// Nothing was entered and the default stands in.
+    pub assumed: bool,
+}
+
+impl Answer {
+    /// An answer in which nothing is decided yet, with what `asked` found.
+    pub fn new(question: &Question, asked: &Asked) -> Answer {
+        let verdict = Verdict { word: "", number: String::new(), sentence: String::new(), state: State::Unknown };
+        Answer {
+            question: question.id,
+            problems: asked.problems.clone(),
+            verdict,
+            results: vec![],
+            tables: vec![],
+            figure: None,
+            working: vec![],
+            notes: asked.notes.clone(),
+            sources: question.sources.to_vec(),
+            read: asked.read.clone(),
+            entry: asked.entry.clone(),
+        }
+    }
+    /// Adds a note.
+    pub fn note(&mut self, text: impl Into<String>) {
+        self.notes.push(Note { level: Level::Note, text: text.into(), fixes: vec![] });
+    }
+    /// Adds a caution.
+    pub fn caution(&mut self, text: impl Into<String>) {
+        self.notes.push(Note { level: Level::Caution, text: text.into(), fixes: vec![] });
+    }
+}

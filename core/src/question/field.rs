@@ -1,0 +1,114 @@
+//! A field of a question: what is asked, in which quantity, over which range and why.
+
+use crate::quantity::unit::Quantity;
+use serde::Serialize;
+
+/// One thing an entry may hold.
+#[derive(Debug, Clone, Copy, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Field {
+    /// Name at the boundary; the unit picked beside the box comes as `NAME.unit`.
+    pub name: &'static str,
+    /// Label on the page, in trade words.
+    pub label: &'static str,
+    /// One or two lines that say what is meant and how good it has to be.
+    pub help: &'static str,
+    /// What kind of thing is entered.
+    pub kind: Kind,
+    /// Text assumed where nothing is entered; empty where there is none.
+    pub default: &'static str,
+    /// An entry that is right, as a person would type it.
+    pub example: &'static str,
+    /// Must be entered for an answer.
+    pub required: bool,
+    /// The same for every question of a site: remembered once.
+    pub shared: bool,
+    /// Heading under which it stands; empty for those always in view.
+    pub group: &'static str,
+}
+
+/// The closed list of kinds of field.
+#[derive(Debug, Clone, Copy, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+#[serde(tag = "type", rename_all = "snake_case")]
+pub enum Kind {
+    /// A number with a unit.
+    Number {
+        /// Which units it may have.
+        quantity: Quantity,
+        /// Least value, SI.
+        min: f64,
+        /// Greatest value, SI.
+        max: f64,
+        /// Why the range is what it is.
+        why: &'static str,
+        /// May be below zero: the page gives it a ± key.
+        negative: bool,
+    },
+    /// One of a few.
+    Choice {
+        /// What may be chosen.
+        options: &'static [Opt],
+        /// Why these and no others.
+        why: &'static str,
+    },
+}
+
+/// One of the things that may be chosen.
+#[derive(Debug, Clone, Copy, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Opt {
+    /// Value at the boundary.
+    pub value: &'static str,
+    /// Words on the page.
+    pub label: &'static str,
+}
+
+impl Field {
+    /// A number of the given quantity; `example` is an entry that is right.
+    pub const fn number(name: &'static str, label: &'static str, quantity: Quantity, example: &'static str) -> Field {
+        let kind = Kind::Number { quantity, min: 0.0, max: 0.0, why: "", negative: false };
+        Field { name, label, help: "", kind, default: "", example, required: false, shared: false, group: "" }
+    }
+    /// One of `options`.
+    pub const fn choice(name: &'static str, label: &'static str, options: &'static [Opt], why: &'static str) -> Field {
+        let example = match options {
+            [first, ..] => first.value,
+            [] => "",
+        };
+        let kind = Kind::Choice { options, why };
+        Field { name, label, help: "", kind, default: "", example, required: false, shared: false, group: "" }
+    }
+    /// Range in SI units, ends included, and why.
+    pub const fn range(mut self, low: f64, high: f64, reason: &'static str) -> Field {
+        if let Kind::Number { quantity, .. } = self.kind {
+            self.kind = Kind::Number { quantity, min: low, max: high, why: reason, negative: low < 0.0 };
+        }
+        self
+    }
+    /// What is meant.
+    pub const fn help(mut self, help: &'static str) -> Field {
+        self.help = help;
+        self
+    }
+    /// What is assumed where nothing is entered.
+    pub const fn default(mut self, default: &'static str) -> Field {
+        self.default = default;
+        self
+    }
+    /// Must be entered.
+    pub const fn required(mut self) -> Field {
+        self.required = true;
+        self
+    }
+    /// The same for every question of a site.
+    pub const fn shared(mut self) -> Field {
+        self.shared = true;
+        self
+    }
+    /// Stands under this heading.
+    pub const fn under(mut self, heading: &'static str) -> Field {
+        self.group = heading;
+        self
+    }
+}
