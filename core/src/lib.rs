@@ -9,3 +9,4 @@
 
 pub mod constants;
 pub mod quantity;
+pub mod ray;

@@ -1,0 +1,42 @@
+//! One sight against figures from 50-digit arithmetic (15 digits printed) and against printed handbook coefficients.
+use farstaff::quantity::{Coefficient, Metres};
+use farstaff::ray::{combined, curvature, handbook_combined};
+
+const R: Metres = Metres(6_371_000.0);
+
+/// The tolerance is the reference's: half a unit of its 15th digit, and a few ulps of our own.
+fn close(got: f64, reference: f64) {
+    assert!((got - reference).abs() <= 5e-15 * reference.abs(), "{got:e} {reference:e}");
+}
+
+#[test]
+fn fifty_digit_rows() {
+    close(curvature(Metres(100.0), R).0, 0.000784806152960802);
+    close(curvature(Metres(1000.0), R).0, 0.0784806160936545);
+    close(curvature(Metres(10_000.0), R).0, 7.84806958511634);
+    for (s, k, h) in [
+        (1000.0, 0.13, 0.0682781358786539),
+        (10_000.0, 0.13, 6.82781931079411),
+        (200_000.0, 0.13, 2732.05062587115),
+        (100.0, 16.0, -0.0117720923910877),
+        (50_000.0, 0.25, 147.153702771139),
+    ] {
+        close(combined(Metres(s), Coefficient(k), R).unwrap().0, h);
+    }
+}
+
+#[test]
+fn feet_table() {
+    // Wolf & Ghilani, Elementary Surveying, 11th ed., ch. 4 (lecture table): R = 20 906 000 ft, k = 0.14, printed to 1e-6 ft.
+    let r = Metres(20_906_000.0);
+    for (d, c) in [(500.0, 0.005142), (1000.0, 0.020568), (2000.0, 0.082273), (4000.0, 0.329092), (8000.0, 1.316368)] {
+        assert!((handbook_combined(Metres(d), Coefficient(0.14), r).0 - c).abs() < 1e-6);
+    }
+}
+
+#[test]
+fn limits() {
+    assert_eq!(combined(Metres(1000.0), Coefficient(1.0), R), Some(Metres(0.0)));
+    assert_eq!(combined(Metres(0.0), Coefficient(0.13), R), Some(Metres(0.0)));
+    assert_eq!(combined(Metres(200_000.0), Coefficient(-100.0), R), None);
+}
