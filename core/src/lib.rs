@@ -7,6 +7,7 @@
 //! - An error is positive when the staff *reads too much*: the point is then higher than booked.
 //! - Doubt is a 95 % half-width, kept apart from bias.
 
+pub mod air;
 pub mod constants;
 pub mod quantity;
 pub mod ray;

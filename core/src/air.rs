@@ -1,0 +1,3 @@
+//! The air: what k may be.
+
+pub mod guide;
