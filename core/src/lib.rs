@@ -11,3 +11,4 @@ pub mod air;
 pub mod constants;
 pub mod quantity;
 pub mod ray;
+pub mod sight;

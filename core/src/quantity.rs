@@ -2,7 +2,6 @@
 
 pub mod number;
 
-
 pub mod unit;
 
 /// A length in metres.

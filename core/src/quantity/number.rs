@@ -42,8 +42,11 @@ pub fn split(text: &str) -> (String, String) {
     for (i, &(at, c)) in bytes.iter().enumerate() {
         let exponent = digits
             && matches!(c, 'e' | 'E')
-            && next(i).is_some_and(|n| n.is_ascii_digit() || (matches!(n, '-' | '+') && bytes.get(i + 2).is_some_and(|b| b.1.is_ascii_digit())));
-        let sign_of_exponent = matches!(c, '-' | '+') && i > 0 && bytes.get(i - 1).is_some_and(|b| matches!(b.1, 'e' | 'E'));
+            && next(i).is_some_and(|n| {
+                n.is_ascii_digit() || (matches!(n, '-' | '+') && bytes.get(i + 2).is_some_and(|b| b.1.is_ascii_digit()))
+            });
+        let sign_of_exponent =
+            matches!(c, '-' | '+') && i > 0 && bytes.get(i - 1).is_some_and(|b| matches!(b.1, 'e' | 'E'));
         let ok = c.is_ascii_digit()
             || matches!(c, '.' | ',' | '/' | ':' | ' ')
             || (matches!(c, '-' | '+') && end == 0)

@@ -187,8 +187,27 @@ pub const QUANTITIES: &[QuantityInfo] = &[
 ];
 
 const ALL: &[Unit] = &[
-    M, MM, CM, KM, FT, FT_US, MI, MM_PER_M, ARC_SECOND, MILLIGON, FT_PER_100_FT, PERCENT, ONE_IN, DEGREE, GON, RATIO, K,
-    HALF_K, FACTOR, ONE_OVER, PER_ONE,
+    M,
+    MM,
+    CM,
+    KM,
+    FT,
+    FT_US,
+    MI,
+    MM_PER_M,
+    ARC_SECOND,
+    MILLIGON,
+    FT_PER_100_FT,
+    PERCENT,
+    ONE_IN,
+    DEGREE,
+    GON,
+    RATIO,
+    K,
+    HALF_K,
+    FACTOR,
+    ONE_OVER,
+    PER_ONE,
 ];
 
 /// Which unit a bare number has.
@@ -227,7 +246,8 @@ impl Quantity {
         let half = |u: &Unit| u.scale == HALF_K.scale && u.symbol == HALF_K.symbol;
         let right = |u: &&Unit| half(u) == (self == Quantity::Refraction && u.symbol == HALF_K.symbol);
         let all = || ALL.iter().filter(mine).filter(right);
-        all().find(|u| u.symbol == text)
+        all()
+            .find(|u| u.symbol == text)
             .or_else(|| all().find(|u| u.symbol.to_lowercase() == lower || u.also.contains(&lower)))
             .copied()
     }
