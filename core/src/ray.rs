@@ -35,3 +35,25 @@ pub fn combined(s: Metres, k: Coefficient, r: Metres) -> Option<Metres> {
 pub fn handbook_combined(s: Metres, k: Coefficient, r: Metres) -> Metres {
     Metres((1.0 - k.0) * s.0 * s.0 / (2.0 * r.0))
 }
+
+/// Refraction alone: [`curvature`] − [`combined`], without the digits that the difference loses at small k.
+///
+/// With A(q) = −ln cos(qθ)/q, refraction = R·exp(A(q))·expm1(A(1) − A(q)). For |qθ| < 0.05, where A(1) and A(q) may be
+/// close, A(1) − A(q) = k·Σ c_n θ^2n (1 + q + … + q^(2n−2)), c = 1/2, 1/12, 1/45, 17/2520, 31/14175, 691/935550: the next
+/// term is below 1e-17 of the sum. `None` where [`combined`] is.
+pub fn refraction(s: Metres, k: Coefficient, r: Metres) -> Option<Metres> {
+    const C: [f64; 6] = [1.0 / 2.0, 1.0 / 12.0, 1.0 / 45.0, 17.0 / 2520.0, 31.0 / 14175.0, 691.0 / 935_550.0];
+    let seen = combined(s, k, r)?;
+    let (theta, q) = (s.0 / r.0, 1.0 - k.0);
+    if (q * theta).abs() >= 0.05 || theta >= 0.05 {
+        return Some(Metres(curvature(s, r).0 - seen.0));
+    }
+    let (mut sum, mut power, mut geometric, mut next) = (0.0, theta * theta, 1.0, q);
+    for c in C {
+        sum += c * power * geometric;
+        power *= theta * theta;
+        geometric += next + next * q;
+        next *= q * q;
+    }
+    Some(Metres((r.0 + seen.0) * libm::expm1(k.0 * sum)))
+}
