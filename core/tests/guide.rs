@@ -1,4 +1,10 @@
 //! The guide of k: our own rule, held to the one published observation it must bracket.
+#![allow(
+    clippy::unwrap_used,
+    clippy::excessive_precision,
+    reason = "a test may panic; references keep their printed digits"
+)]
+
 use farstaff::air::guide::{Sky, k};
 use farstaff::quantity::Metres;
 

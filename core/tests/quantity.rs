@@ -1,4 +1,10 @@
 //! Numbers and units as people type them.
+#![allow(
+    clippy::unwrap_used,
+    clippy::excessive_precision,
+    reason = "a test may panic; references keep their printed digits"
+)]
+
 use farstaff::quantity::number::{NotANumber, number, sexagesimal, split};
 use farstaff::quantity::unit::{Quantity, System};
 

@@ -1,4 +1,10 @@
 //! One sight against figures from 50-digit arithmetic (15 digits printed) and against printed handbook coefficients.
+#![allow(
+    clippy::unwrap_used,
+    clippy::excessive_precision,
+    reason = "a test may panic; references keep their printed digits"
+)]
+
 use farstaff::quantity::{Coefficient, Metres};
 use farstaff::ray::{combined, curvature, handbook_combined, refraction};
 

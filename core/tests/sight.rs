@@ -1,4 +1,10 @@
 //! Reach and imbalance against values from 50-digit arithmetic (coverage 2, so each half-width is twice the standard one).
+#![allow(
+    clippy::unwrap_used,
+    clippy::excessive_precision,
+    reason = "a test may panic; references keep their printed digits"
+)]
+
 use farstaff::quantity::{Metres, Tilt};
 use farstaff::sight::{SightDoubt, imbalance, reach};
 use std::f64::consts::PI;
