@@ -9,6 +9,10 @@
 
 pub mod air;
 pub mod constants;
+pub mod doubt;
+pub mod limits;
 pub mod quantity;
+pub mod question;
+mod questions;
 pub mod ray;
 pub mod sight;

@@ -1,7 +1,7 @@
 //! Quantities and their units: the only place where units exist.
 
 pub mod number;
-
+pub mod show;
 pub mod unit;
 
 /// A length in metres.

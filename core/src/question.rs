@@ -77,7 +77,12 @@ pub struct Catalogue {
 
 /// Every question and its fields, as data.
 pub fn catalogue() -> Catalogue {
-    Catalogue { version: env!("CARGO_PKG_VERSION"), questions: crate::questions::ALL, quantities: QUANTITIES, units_field: site::UNITS.name }
+    Catalogue {
+        version: env!("CARGO_PKG_VERSION"),
+        questions: crate::questions::ALL,
+        quantities: QUANTITIES,
+        units_field: site::UNITS.name,
+    }
 }
 
 /// Answers question `id` for an entry in the form an HTML form submits: `distance=300+m&tolerance=2+mm`.

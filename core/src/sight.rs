@@ -2,6 +2,9 @@
 //!
 //! All doubts here are half-widths at one and the same coverage as the allowance (95 % throughout this crate).
 
+pub mod bounds;
+pub mod budget;
+
 use crate::quantity::{Metres, Tilt};
 
 /// The doubts of one sight, each the half-width of an independent part.
@@ -36,11 +39,14 @@ pub fn reach(allowed: Metres, doubt: SightDoubt, r: Metres) -> Option<Metres> {
 /// Greatest difference between the two sights of a setup of mean length `mean` whose doubt stays inside `allowed`;
 /// `None` where not even equal sights do. `common` is the correlation of k on the two sights.
 ///
-/// e² = [allowed² − 2U_0² − (1−ρ) D⁴ U_k²/2R²] / [U_α² + (D U_k/R)²], to second order in e/D.
+/// e² = [allowed² − 2U_0² − 2(D U_g)² − (1−ρ) D⁴ U_k²/2R²] / [U_α² + U_g²/2 + (D U_k/R)²]. Of what k's doubt adds with
+/// e² no more than (3 + ρ)/4 is real: the rest is on the safe side, as long as e ≤ 2D.
 pub fn imbalance(allowed: Metres, mean: Metres, doubt: SightDoubt, common: f64, r: Metres) -> Option<Metres> {
     let swing = mean.0 * doubt.k / r.0;
     let kept = (1.0 - common) * mean.0 * mean.0 * swing * swing / 2.0;
-    let left = allowed.0 * allowed.0 - 2.0 * doubt.reading.0 * doubt.reading.0 - kept;
-    let squared = left / (doubt.collimation.0 * doubt.collimation.0 + swing * swing);
+    let growth = doubt.reading_growth.0 * doubt.reading_growth.0;
+    let readings = 2.0 * (doubt.reading.0 * doubt.reading.0 + growth * mean.0 * mean.0);
+    let left = allowed.0 * allowed.0 - readings - kept;
+    let squared = left / (doubt.collimation.0 * doubt.collimation.0 + growth / 2.0 + swing * swing);
     (squared >= 0.0).then(|| Metres(squared.sqrt()))
 }

@@ -1,7 +1,8 @@
 //! What comes back: the decision first, then everything it rests on.
 
 use super::figure::Figure;
-use super::{Asked, Question};
+use super::{Asked, Promise, Question};
+use crate::quantity::show::Shown;
 use serde::Serialize;
 
 /// The answer to one entry.
@@ -190,6 +191,18 @@ impl Answer {
             read: asked.read.clone(),
             entry: asked.entry.clone(),
         }
+    }
+    /// Adds a result; `doubt` with its text.
+    pub fn result(
+        &mut self,
+        promise: &Promise,
+        value: Option<f64>,
+        shown: Shown,
+        doubt: Option<Doubt>,
+        meaning: String,
+    ) {
+        let Promise { name, label, .. } = *promise;
+        self.results.push(Outcome { name, label, value, text: shown.text, unit: shown.unit, doubt, meaning });
     }
     /// Adds a note.
     pub fn note(&mut self, text: impl Into<String>) {

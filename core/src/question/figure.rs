@@ -1,6 +1,7 @@
 //! A picture, as data. Every coordinate is a share of the drawing's width (from the left) or height (from the bottom),
 //! 0 to 1, so that the page only scales: it does no arithmetic on a measurement.
 
+use crate::quantity::show::fitting;
 use serde::Serialize;
 
 /// A picture; the table of the same name in the answer holds its numbers.
@@ -138,4 +139,25 @@ pub enum Mark {
         /// Words.
         label: String,
     },
+}
+
+/// An axis from `low` to `high` with four to eight round figures on it.
+pub fn axis(label: String, low: f64, high: f64) -> Axis {
+    let span = high - low;
+    let rough = libm::pow(10.0, libm::floor(libm::log10(span / 4.0)));
+    let step = [5.0, 2.0, 1.0].iter().map(|m| m * rough).find(|s| span / s >= 4.0).unwrap_or(rough);
+    let first = libm::ceil(low / step);
+    let count = libm::floor((high - first * step) / step);
+    let places = fitting(step, 1);
+    let mut ticks = vec![];
+    let mut i = 0.0;
+    while i <= count && ticks.len() < 12 {
+        let value = (first + i) * step;
+        ticks.push(Tick {
+            at: ((value - low) / span).clamp(0.0, 1.0),
+            text: crate::quantity::show::places(value, places),
+        });
+        i += 1.0;
+    }
+    Axis { label, ticks }
 }

@@ -1,0 +1,121 @@
+//! Quantity → text: how many digits, which unit, which way to round.
+
+use super::unit::{Quantity, System, Unit};
+
+/// A value as a person reads it.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Shown {
+    /// Digits.
+    pub text: String,
+    /// Unit, empty for none.
+    pub unit: &'static str,
+}
+
+impl std::fmt::Display for Shown {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        // A no-break space: number and unit are one word.
+        let gap = if self.unit.is_empty() || self.unit.starts_with(['″', '°']) { "" } else { "\u{a0}" };
+        write!(f, "{}{gap}{}", self.text, self.unit)
+    }
+}
+
+/// Which way a shown distance is rounded: always to the safe side of a limit.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Round {
+    /// To the nearest.
+    Near,
+    /// A longest distance.
+    Down,
+    /// A shortest distance.
+    Up,
+}
+
+/// `value` with so many places, a real minus, and no minus before a zero.
+pub fn places(value: f64, places: usize) -> String {
+    let text = format!("{value:.places$}");
+    match text.strip_prefix('-') {
+        Some(rest) if rest.chars().any(|c| c.is_ascii_digit() && c != '0') => format!("−{rest}"),
+        Some(rest) => rest.to_owned(),
+        None => text,
+    }
+}
+
+/// Power of ten of the leading digit.
+fn magnitude(value: f64) -> i32 {
+    if value == 0.0 || !value.is_finite() { 0 } else { libm::floor(libm::log10(value.abs())) as i32 }
+}
+
+/// Places that leave `digits` significant digits of `grain`, at most 9.
+pub fn fitting(grain: f64, digits: i32) -> usize {
+    if grain == 0.0 { 2 } else { (digits - 1 - magnitude(grain)).clamp(0, 9) as usize }
+}
+
+/// Whole digits for what has been rounded to so many significant ones, plain notation, trailing zeros after the point off.
+pub fn significant(value: f64, digits: i32) -> String {
+    let text = places(value, fitting(value, digits));
+    if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.').to_owned() } else { text }
+}
+
+fn in_unit(si: f64, unit: &Unit) -> f64 {
+    unit.from_si(si).unwrap_or(0.0)
+}
+
+/// Units of the answer.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct Show(pub System);
+
+impl Show {
+    /// The unit errors and corrections are shown in: mm, or feet; metres from ten metres up.
+    pub fn small_unit(self, si: f64) -> Unit {
+        let quantity = if si.abs() >= 10.0 { Quantity::Height } else { Quantity::SmallLength };
+        quantity.usual(self.0)
+    }
+    /// A small length to two significant digits of `grain` (its doubt, or itself).
+    pub fn small(self, si: f64, grain: f64) -> Shown {
+        let unit = self.small_unit(si.abs().max(grain.abs()));
+        Shown { text: places(in_unit(si, &unit), fitting(in_unit(grain, &unit), 2)), unit: unit.symbol }
+    }
+    /// A small length to two significant digits of its own.
+    pub fn own(self, si: f64) -> Shown {
+        self.small(si, si)
+    }
+    /// A height, to a tenth of a millimetre or a thousandth of a foot.
+    pub fn height(self, si: f64) -> Shown {
+        let unit = Quantity::Height.usual(self.0);
+        Shown { text: places(in_unit(si, &unit), if unit.symbol == "m" { 4 } else { 3 }), unit: unit.symbol }
+    }
+    /// A height in words: as many digits as it has, up to the centimetre or the hundredth of a foot.
+    pub fn height_words(self, si: f64) -> Shown {
+        let unit = Quantity::Height.usual(self.0);
+        let text = places(in_unit(si, &unit), 2);
+        Shown { text: text.trim_end_matches('0').trim_end_matches('.').to_owned(), unit: unit.symbol }
+    }
+    /// A distance along the ground: three significant digits, never finer than 0.1; kilometres or miles from ten up.
+    pub fn distance(self, si: f64, round: Round) -> Shown {
+        let usual = Quantity::Distance.usual(self.0);
+        let long = Quantity::Distance.unit(if usual.symbol == "m" { "km" } else { "mi" }).unwrap_or(usual);
+        let unit = if in_unit(si, &long).abs() >= 10.0 { long } else { usual };
+        let value = in_unit(si, &unit);
+        let shown = fitting(value, 3).min(1);
+        let step = if shown == 1 { 0.1 } else { libm::pow(10.0, f64::from((magnitude(value) - 2).max(0))) };
+        let steps = value / step;
+        let whole = match round {
+            Round::Near => libm::round(steps),
+            // A value that is whole but for the last bits of the division stays what it is.
+            Round::Down => libm::floor(steps * (1.0 + 1e-12)),
+            Round::Up => libm::ceil(steps * (1.0 - 1e-12)),
+        };
+        let text = places(whole * step, shown);
+        let text = text.strip_suffix(".0").map_or(text.clone(), str::to_owned);
+        Shown { text, unit: unit.symbol }
+    }
+    /// A tilt of the line, mm/m and seconds of arc.
+    pub fn tilt(self, rise: f64) -> String {
+        let seconds = Quantity::Collimation.unit("″").and_then(|u| u.from_si(rise)).unwrap_or(0.0);
+        format!("{}\u{a0}mm/m, {}″", significant(rise * 1000.0, 2), significant(seconds, 2))
+    }
+    /// k to two places, or two significant digits where it is small.
+    pub fn k(self, k: f64) -> String {
+        if k.abs() >= 0.1 { significant(k, 3) } else { places(k, 2) }
+    }
+}

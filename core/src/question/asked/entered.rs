@@ -1,0 +1,192 @@
+//! One number as it was entered: its digits, its unit, its SI value, and what to do where one of them is missing.
+
+use super::{Field, Fix, clip, lower};
+use crate::quantity::number::{self, NotANumber, Number};
+use crate::quantity::show::{Shown, significant};
+use crate::quantity::unit::{Quantity, System, Unit};
+use crate::question::field::Kind;
+
+/// A number that was read.
+pub struct Entered {
+    /// Its digits.
+    pub number: Number,
+    /// The unit it has.
+    pub unit: Unit,
+    /// No unit was entered with it.
+    pub bare: bool,
+    /// What it comes to.
+    pub si: f64,
+}
+
+/// What to do, and what may have been meant.
+type Wrong = (String, Vec<Fix>);
+
+/// Reads `text`, in the unit it brings, else the one `picked` beside the box, else the usual one of `system`.
+pub fn read(
+    field: &'static Field,
+    quantity: Quantity,
+    system: System,
+    text: &str,
+    picked: &str,
+) -> Result<Entered, Wrong> {
+    let usual = quantity.usual(system);
+    let (digits, own) = split(quantity, text);
+    let unit = if own.is_empty() { picked } else { &own };
+    let bare = unit.is_empty();
+    let found = if bare { Some(usual) } else { quantity.unit(unit) };
+    let (number, unit) = match found {
+        Some(unit) => (number::number(&digits).map_err(|e| unreadable(field, text, &unit, e))?, unit),
+        None => of_degrees(field, quantity, text).unwrap_or_else(|| Err(no_unit(field, quantity, &digits, unit)))?,
+    };
+    let unit = slope_as_ratio(quantity, &number, bare).unwrap_or(unit);
+    let si = unit.to_si(number.value).ok_or_else(|| {
+        let message =
+            format!("{} cannot be {} {}: there is no such value.", field.label, clip(&number.text), unit.symbol);
+        (message, vec![])
+    })?;
+    in_range(field, quantity, system, &number, &unit, si)?;
+    Ok(Entered { number, unit, bare, si })
+}
+
+/// The text that says the same by itself; `bare` keeps the number without its unit.
+pub fn written(number: &Number, unit: &Unit, bare: bool) -> String {
+    match unit.symbol {
+        _ if bare || number.sexagesimal => number.text.clone(),
+        "1 in" => format!("1 in {}", number.text),
+        "1/" => format!("1/{}", number.text),
+        symbol => format!("{} {symbol}", number.text),
+    }
+}
+
+/// Number and unit of a text; also `1 in 20`, and for k the forms `m = 0.07`, `k 0.13`.
+fn split(quantity: Quantity, text: &str) -> (String, String) {
+    let lower = text.to_lowercase();
+    if quantity == Quantity::Gradient
+        && let Some((one, rest)) = lower.split_once(" in ")
+        && one.trim() == "1"
+    {
+        return (rest.trim().to_owned(), "1 in".to_owned());
+    }
+    if quantity == Quantity::Refraction {
+        for symbol in ["factor", "k", "m"] {
+            if let Some(rest) = lower.strip_prefix(symbol) {
+                let (digits, after) = number::split(rest.trim_start_matches([' ', '=']));
+                if after.is_empty() && !digits.is_empty() {
+                    return (digits, symbol.to_owned());
+                }
+            }
+        }
+    }
+    number::split(text)
+}
+
+/// `1:20` or `1/20` without a unit is a slope of one in twenty, not of a twentieth of a percent.
+fn slope_as_ratio(quantity: Quantity, number: &Number, bare: bool) -> Option<Unit> {
+    (quantity == Quantity::Gradient && bare && number.text.contains('/')).then(|| quantity.unit("m/m"))?
+}
+
+/// Degrees, minutes and seconds, for a quantity that is an angle in one of its units.
+fn of_degrees(field: &'static Field, quantity: Quantity, text: &str) -> Option<Result<(Number, Unit), Wrong>> {
+    let read = number::sexagesimal(text)?;
+    if let Some(unit) = quantity.unit("°") {
+        return Some(read.map(|n| (n, unit)).map_err(|e| unreadable(field, text, &unit, e)));
+    }
+    if let Some(unit) = quantity.unit("″") {
+        let seconds = |n: Number| (Number { value: n.value * 3600.0, ..n }, unit);
+        return Some(read.map(seconds).map_err(|e| unreadable(field, text, &unit, e)));
+    }
+    let message = format!("{}: feet and inches are not read. Enter decimal feet, as in 5.5 ft.", field.label);
+    Some(Err((message, vec![])))
+}
+
+fn fix(field: &'static Field, text: &str, unit: &Unit) -> Fix {
+    let shown = Shown { text: text.to_owned(), unit: unit.symbol };
+    Fix { label: format!("It is {shown}"), field: field.name, text: text.to_owned(), unit: unit.symbol }
+}
+
+fn unreadable(field: &'static Field, text: &str, unit: &Unit, why: NotANumber) -> Wrong {
+    let text = clip(text);
+    match why {
+        NotANumber::Unreadable => {
+            let message = format!("“{text}” is not a number. Enter {} as in {}.", lower(field.label), field.example);
+            (message, vec![])
+        }
+        NotANumber::Separators(meant) => {
+            let message =
+                format!("“{text}” has more than one point or comma. Enter {} with one of them.", lower(field.label));
+            (message, meant.iter().map(|m| fix(field, m, unit)).collect())
+        }
+        NotANumber::OutOfReach => {
+            let message = format!(
+                "“{text}” is no number that can be worked with. Enter {} as in {}.",
+                lower(field.label),
+                field.example
+            );
+            (message, vec![])
+        }
+    }
+}
+
+fn no_unit(field: &'static Field, quantity: Quantity, digits: &str, unit: &str) -> Wrong {
+    if digits.is_empty() {
+        return (
+            format!("“{}” is not a number. Enter {} as in {}.", clip(unit), lower(field.label), field.example),
+            vec![],
+        );
+    }
+    let symbols: Vec<&str> = quantity.info().units.iter().map(|u| u.symbol).collect();
+    let fixes = symbols.iter().filter_map(|s| quantity.unit(s)).take(2).map(|u| fix(field, digits, &u)).collect();
+    let message = format!("“{}” is no unit of {}. Use {}.", clip(unit), lower(field.label), listed(&symbols));
+    (message, if number::number(digits).is_ok() { fixes } else { vec![] })
+}
+
+/// `a, b or c`.
+fn listed(words: &[&str]) -> String {
+    match words {
+        [] => String::new(),
+        [one] => (*one).to_owned(),
+        [most @ .., last] => format!("{} or {last}", most.join(", ")),
+    }
+}
+
+/// Between the ends of its range, else what range that is, why, and in which other unit the number would fit.
+fn in_range(
+    field: &'static Field,
+    quantity: Quantity,
+    system: System,
+    number: &Number,
+    unit: &Unit,
+    si: f64,
+) -> Result<(), Wrong> {
+    let Kind::Number { min, max, why, .. } = field.kind else { return Ok(()) };
+    if si >= min && si <= max {
+        return Ok(());
+    }
+    let end = |si: f64| end_of_range(quantity, system, si);
+    let message = format!("{} must be between {} and {}: {why}.", field.label, end(min), end(max));
+    let mut fixes = vec![];
+    let fits = |value: f64, u: &Unit| u.to_si(value).is_some_and(|si| si >= min && si <= max);
+    if let Some(also) = &number.also
+        && also.parse().is_ok_and(|v| fits(v, unit))
+    {
+        fixes.push(fix(field, also, unit));
+    }
+    let others = quantity.info().units.iter().filter_map(|u| quantity.unit(u.symbol));
+    let others = others.filter(|u| u.symbol != unit.symbol && !number.sexagesimal && fits(number.value, u));
+    fixes.extend(others.take(2).map(|u| fix(field, &number.text, &u)));
+    Err((message, fixes))
+}
+
+/// An end of a range, in the largest of the usual units that keeps it a round figure.
+fn end_of_range(quantity: Quantity, system: System, si: f64) -> Shown {
+    let usual = quantity.usual(system);
+    let larger = quantity.unit(match quantity {
+        Quantity::Distance if usual.symbol == "m" => "km",
+        Quantity::Distance => "mi",
+        Quantity::SmallLength | Quantity::Height if usual.symbol == "mm" || usual.symbol == "m" => "m",
+        _ => usual.symbol,
+    });
+    let unit = larger.filter(|u| u.from_si(si).is_some_and(|n| n.abs() >= 1.0)).unwrap_or(usual);
+    let text = significant(unit.from_si(si).unwrap_or(0.0), 4);
+    Shown { text, unit: if unit.symbol == "k" { "" } else { unit.symbol } }
+}

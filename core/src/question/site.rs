@@ -1,0 +1,211 @@
+//! What many questions of a site ask alike: declared once, read once.
+
+use super::answer::{Answer, Doubt, Fix, Level, Note};
+use super::field::{Field, Opt};
+use super::{Asked, Promise};
+use crate::air::guide::{self, KRange, Sky};
+use crate::constants::{EARTH_RADIUS, RADIUS_SPREAD};
+use crate::doubt::Estimate;
+use crate::quantity::show::{Show, Shown};
+use crate::quantity::unit::{Quantity, Unit};
+use crate::quantity::{Coefficient, Metres};
+
+/// Heading of the fields about the air.
+pub const AIR: &str = "The air";
+/// Heading of the fields that set the rule.
+pub const RULE: &str = "The rule";
+
+/// Below this height a line is near the ground, where k above 1 is ordinary: the guide reaches it under a clear night sky
+/// at any height, by day at none above.
+const NEAR_GROUND: f64 = 3.0;
+
+/// Which unit a bare number has.
+pub const UNITS: Field = Field::choice(
+    "units",
+    "Units",
+    &[
+        Opt { value: "m", label: "metres and millimetres" },
+        Opt { value: "ft", label: "international feet" },
+        Opt { value: "ftUS", label: "US survey feet" },
+    ],
+    "a number may always bring its own unit",
+)
+.help("What a number without a unit is in, and what the answer is shown in.")
+.default("m")
+.shared()
+.under(RULE);
+
+/// Shortest distance that is read, metres.
+pub const NEAREST: f64 = 1.0;
+/// Longest distance that is read, metres.
+pub const FARTHEST: f64 = 200_000.0;
+/// Why distances have that range.
+pub const DISTANCES: &str = "a level does not focus closer, and no line of sight over the ground is longer";
+
+/// Length of a sight.
+pub const DISTANCE: Field = Field::number("distance", "Distance", Quantity::Distance, "60 m")
+    .range(NEAREST, FARTHEST, DISTANCES)
+    .help("From the level to the staff, along the ground. Paces are good enough.")
+    .required();
+
+/// Doubt of a distance; each question says what is usual for it.
+pub const DISTANCE_DOUBT: Field = Field::number("distance_doubt", "Doubt of the distances", Quantity::Share, "5 %")
+    .range(0.0, 1.0, "it is a share of the distance")
+    .under(RULE);
+
+/// Height of the line over the ground.
+pub const LINE_HEIGHT: Field = Field::number("line_height", "Height of the line", Quantity::Height, "1.5 m")
+    .range(0.05, 1000.0, "below 5 cm the line is in the grass, above 1 km the guide of k says nothing")
+    .help("Over the ground, where it runs lowest for long. Half a metre more is worth more than any correction.")
+    .default("1.5 m")
+    .shared();
+
+/// What is seen of the sky.
+pub const SKY: Field = Field::choice(
+    "sky",
+    "Sky",
+    &[
+        Opt { value: "sunny", label: "sun on the ground" },
+        Opt { value: "overcast", label: "overcast or windy" },
+        Opt { value: "clear_night", label: "clear calm night" },
+        Opt { value: "unknown", label: "by day, not known" },
+    ],
+    "they are what the guide of k tells apart",
+)
+.help("As it was over the last half hour.")
+.default("unknown")
+.shared();
+
+/// k, where it is known better than from sky and height.
+pub const K: Field = Field::number("k", "Coefficient of refraction k", Quantity::Refraction, "0.13")
+    .range(-100.0, 100.0, "beyond it no line of sight has been reported")
+    .help("Overrules sky and height. k is the earth's radius over the ray's; books that print m mean half of it.")
+    .shared()
+    .under(AIR);
+
+/// Doubt of k.
+pub const K_DOUBT: Field = Field::number("k_doubt", "Doubt of k", Quantity::Refraction, "0.5")
+    .range(0.0, 100.0, "it is a half-width, and as wide as k itself can be")
+    .help("Half of the range that holds k 95 times in 100. Left empty: as wide as the guide has it for this sky and height.")
+    .shared()
+    .under(AIR);
+
+/// Radius of the earth.
+pub const RADIUS: Field = Field::number("radius", "Radius of the earth", Quantity::Radius, "6371 km")
+    .range(6_300_000.0, 6_420_000.0, "the earth's radii of curvature lie between 6335 and 6400 km")
+    .help("Left empty: the mean radius, doubted by as much as radii differ over the earth. Entered: taken as exact.")
+    .shared()
+    .under(AIR);
+
+/// The k in force, and how it was come by.
+#[derive(Debug, Clone, PartialEq)]
+pub struct AirInForce {
+    /// k and its range.
+    pub k: KRange,
+    /// Where it comes from, as part of a sentence.
+    pub source: String,
+}
+
+/// The sky that was chosen.
+pub fn sky(asked: &Asked) -> Sky {
+    match asked.choice(&SKY) {
+        "sunny" => Sky::Sunny,
+        "overcast" => Sky::Overcast,
+        "clear_night" => Sky::ClearNight,
+        _ => Sky::Unknown,
+    }
+}
+
+/// The words for a sky.
+pub fn sky_words(sky: Sky) -> &'static str {
+    match sky {
+        Sky::Sunny => "with sun on the ground",
+        Sky::Overcast => "under an overcast or windy sky",
+        Sky::ClearNight => "on a clear calm night",
+        Sky::Unknown => "by day under any sky",
+    }
+}
+
+/// The k in force under `sky`: as entered, else by the guide.
+pub fn air(asked: &Asked, sky: Sky) -> AirInForce {
+    let height = asked.must(&LINE_HEIGHT);
+    let guide = guide::k(Metres(height), sky);
+    let given = asked.number(&K);
+    let value = given.unwrap_or(guide.value.0);
+    let (below, above) = match asked.number(&K_DOUBT) {
+        Some(half) => (half, half),
+        None => (guide.value.0 - guide.low.0, guide.high.0 - guide.value.0),
+    };
+    let k = KRange { value: Coefficient(value), low: Coefficient(value - below), high: Coefficient(value + above) };
+    let at = asked.show().height_words(height);
+    let guide_words = format!("our guide for a line {at} over the ground {}", sky_words(sky));
+    let source = match (given, asked.number(&K_DOUBT)) {
+        (Some(_), Some(_)) => "as entered".to_owned(),
+        (Some(_), None) => format!("as entered, its doubt from {guide_words}"),
+        (None, Some(_)) => format!("from {guide_words}, its doubt as entered"),
+        (None, None) => format!("from {guide_words}"),
+    };
+    AirInForce { k, source }
+}
+
+/// Doubt as shown beside a value of the same unit.
+pub fn doubt_words(error: &Estimate, show: Show) -> Doubt {
+    let text = |si: f64| show.small(si, error.half());
+    let text = if error.lopsided() {
+        format!("from {} to {}", text(error.bias - error.below), text(error.bias + error.above))
+    } else {
+        format!("± {}", text(error.half()))
+    };
+    Doubt { value: error.half(), text }
+}
+
+/// The result that says which k is in force.
+pub fn k_result(promise: &Promise, air: &AirInForce, show: Show, answer: &mut Answer) {
+    let k = air.k;
+    let half = (k.value.0 - k.low.0).max(k.high.0 - k.value.0);
+    let doubt = Doubt { value: half, text: format!("from {} to {}", show.k(k.low.0), show.k(k.high.0)) };
+    let shown = Shown { text: show.k(k.value.0), unit: "" };
+    answer.result(promise, Some(k.value.0), shown, Some(doubt), air.source.clone());
+}
+
+/// The radius in force and its doubt as a share: none where it was entered.
+pub fn radius(asked: &Asked) -> (Metres, f64) {
+    match asked.number(&RADIUS) {
+        Some(radius) => (Metres(radius), 0.0),
+        None => (EARTH_RADIUS, RADIUS_SPREAD),
+    }
+}
+
+/// Asks back where k looks like m, or like a factor on the earth's radius.
+pub fn doubt_k(asked: &Asked, answer: &mut Answer) {
+    let Some(k) = asked.number(&K) else { return };
+    if !asked.bare(&K) {
+        return;
+    }
+    let near_ground = asked.given(&LINE_HEIGHT) && asked.must(&LINE_HEIGHT) < NEAR_GROUND;
+    let meant = if (0.06..=0.09).contains(&k) {
+        Some(("m", "It is m", "is it m, which is half of k?"))
+    } else if k > 1.0 && !near_ground {
+        Some((
+            "factor",
+            "It is a factor",
+            "is it the factor on the earth's radius? Above 1, the line bends more than the earth does.",
+        ))
+    } else {
+        None
+    };
+    let Some((symbol, label, question)) = meant else { return };
+    let unit: Option<Unit> = Quantity::Refraction.unit(symbol);
+    let Some(converted) = unit.and_then(|u| u.to_si(k)) else { return };
+    let text = asked.text(&K).to_owned();
+    let fix = |label: String, unit| Fix { label, field: K.name, text: text.clone(), unit };
+    let fixes = vec![
+        fix(format!("{label}: k = {}", asked.show().k(converted)), symbol),
+        fix(format!("It is k: k = {}", asked.show().k(k)), "k"),
+    ];
+    answer.notes.push(Note {
+        level: Level::Caution,
+        text: format!("k was entered as {}: {question}", asked.text(&K)),
+        fixes,
+    });
+}

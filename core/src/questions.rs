@@ -1,0 +1,9 @@
+//! Every question, in the page's order.
+
+mod reading;
+mod sight;
+
+use crate::question::Question;
+
+/// All of them.
+pub const ALL: &[&Question] = &[&sight::QUESTION, &reading::QUESTION];

@@ -1,0 +1,217 @@
+//! May this sight run this far?
+
+mod case;
+mod decide;
+mod figure;
+mod limit;
+mod sheet;
+
+use crate::limits;
+use crate::quantity::unit::Quantity;
+use crate::question::field::{Field, Opt};
+use crate::question::{Answer, Asked, Caution, Promise, Question, site};
+use case::Case;
+
+pub const QUESTION: Question = Question {
+    id: "sight",
+    phrase: "May this sight run this far?",
+    about: "Paces, tolerance, height of the line and sky: take it, shorten it, balance it or observe it both ways.",
+    fields: &[
+        site::DISTANCE,
+        TOLERANCE,
+        site::LINE_HEIGHT,
+        site::SKY,
+        OTHER,
+        COLLIMATION,
+        COLLIMATION_DOUBT,
+        site::K,
+        site::K_DOUBT,
+        K_SHARED,
+        site::RADIUS,
+        STAFF,
+        INSTRUMENT,
+        SLOPE,
+        CLEARANCE,
+        SHARE,
+        CLASS,
+        READING_DOUBT,
+        READING_GROWTH,
+        DISTANCE_DOUBT,
+        site::UNITS,
+    ],
+    results: &[
+        BIAS,
+        DOUBT,
+        CURVATURE,
+        REFRACTION,
+        COLLIMATION_PART,
+        READING_PART,
+        DISTANCE_PART,
+        K_USED,
+        REACH_UNCORRECTED,
+        REACH_CORRECTED,
+        OTHER_SHORTEST,
+        OTHER_LONGEST,
+        BOTH_WAYS,
+    ],
+    cautions: &[
+        Caution {
+            text: "Never point a telescope at or near the sun: it blinds at once.",
+            governed_by: "your site's safety rules and the maker's manual",
+        },
+        Caution {
+            text: "Keep staffs and poles away from overhead lines: wet or dry, wood or metal, they can kill.",
+            governed_by: "the line's owner and the safety law of the place",
+        },
+        Caution {
+            text: "Beside traffic, plant, water or a drop, one person watches while the other observes.",
+            governed_by: "the site's traffic and safety plan",
+        },
+        Caution {
+            text: "The verdict is about the limit you entered. Your specification and the surveyor in charge come first.",
+            governed_by: "the contract, and the law on licensed practice",
+        },
+    ],
+    sources: &[
+        "Curvature and refraction: closed forms for a ray of constant k (refractive index in proportion to a power of the radius), derived for this calculator and checked to 50 digits.",
+        "Parabola D²/2R and (1 − k) D²/2R: Ghilani & Wolf, Elementary Surveying, chapter 4.",
+        "k by height of the line and sky: a rule of this calculator, not a published table; bracketed by k from −4 to +16 seen 1.8 m over grass (Hirt and others, J. Geophys. Res. 115, D21102, 2010).",
+        "Doubt, coverage and adding in squares: JCGM 100:2008, Guide to the expression of uncertainty in measurement, 5.1.2 and 6.3.3.",
+        "Bias plus doubt within a share of the tolerance: a planning rule of this calculator; the share is yours to set.",
+    ],
+    answer,
+};
+
+const SETUP: &str = "The setup";
+const GROUND: &str = "Staff and ground";
+
+const TOLERANCE: Field = Field::number("tolerance", "Tolerance", Quantity::SmallLength, "3 mm")
+    .range(0.00001, 10.0, "a hundredth of a millimetre is finer than any staff, ten metres is no tolerance")
+    .help("What the height may be out by because of this sight, or of this setup.")
+    .required()
+    .shared();
+const OTHER: Field = Field::number("other_distance", "The other sight of the setup", Quantity::Distance, "55 m")
+    .range(site::NEAREST, site::FARTHEST, site::DISTANCES)
+    .help("Back sight to this fore sight, or the other way round. Left empty: this sight stands alone, as an intermediate one does.")
+    .under(SETUP);
+const COLLIMATION: Field = Field::number(
+    "collimation",
+    "Collimation error of the level",
+    Quantity::Collimation,
+    "0.03 mm/m",
+)
+.range(-0.01, 0.01, "a level further out than 10 mm/m is broken")
+.help(
+    "From the last peg test, + where the line points up. Left empty: none is known, and the doubt below stands for it.",
+)
+.under(SETUP);
+const COLLIMATION_DOUBT: Field =
+    Field::number("collimation_doubt", "Doubt of the collimation error", Quantity::Collimation, "0.02 mm/m")
+        .range(0.0, 0.01, "a level further out than 10 mm/m is broken")
+        .help("Half-width that holds it 95 times in 100. By default what a level in adjustment is often allowed (common practice, no source).")
+        .default("0.05 mm/m")
+        .under(SETUP);
+const DISTANCE_DOUBT: Field = site::DISTANCE_DOUBT
+    .help("Pacing is good to a twentieth (common practice, no source). Only the bias depends on it.")
+    .default("5 %");
+const K_SHARED: Field = Field::number("k_shared", "Correlation of k", Quantity::Share, "50 %")
+    .range(0.0, 1.0, "it is a share: at 0 % the two sights have each their own air, at 100 % the same")
+    .help("How much of the doubt of k is common to the two sights of a setup, or to the two ways (our assumption, no source).")
+    .default("50 %")
+    .under(site::AIR);
+const STAFF: Field = Field::number("staff_length", "Length of the staff", Quantity::Height, "4 m")
+    .range(0.1, 20.0, "staffs are between a short scale and a long telescopic one")
+    .help("Left empty: the top of the staff is no limit.")
+    .under(GROUND);
+const INSTRUMENT: Field = Field::number("instrument_height", "Height of the instrument", Quantity::Height, "1.5 m")
+    .range(0.0, 100.0, "of the line over the ground where the level stands")
+    .help("Of its line over the ground where it stands. Left empty: the height of the line.")
+    .under(GROUND);
+const SLOPE: Field = Field::number("ground_slope", "Slope of the ground", Quantity::Gradient, "4 %")
+    .range(-2.0, 2.0, "steeper than two in one is no ground to level over")
+    .help("Towards the staff: + uphill, − downhill. Uphill the line meets the foot of the staff, downhill it leaves the top.")
+    .under(GROUND);
+const CLEARANCE: Field =
+    Field::number("ground_clearance", "Least clearance over the ground", Quantity::Height, "0.5 m")
+        .range(0.0, 100.0, "it is a height over the ground")
+        .help("How close to the ground the line may come. Left empty: only the ground itself is in the way.")
+        .under(GROUND);
+const SHARE: Field = Field::number("share", "Share of the tolerance", Quantity::Share, "50 %")
+    .range(0.01, 1.0, "it is a share of the tolerance")
+    .help("How much of the tolerance this sight may use: bias and doubt together. The rest is for everything else.")
+    .default("50 %")
+    .under(site::RULE);
+#[allow(clippy::indexing_slicing, reason = "worked out and checked while compiling")]
+const CLASS_OPTIONS: &[Opt] = &{
+    let mut options = [Opt { value: "none", label: "no class: your own limit only" }; limits::CLASSES.len() + 1];
+    let mut i = 0;
+    while i < limits::CLASSES.len() {
+        options[i + 1] = Opt { value: limits::CLASSES[i].name, label: limits::CLASSES[i].label };
+        i += 1;
+    }
+    options
+};
+const CLASS: Field =
+    Field::choice("limit_class", "Published class", CLASS_OPTIONS, "they are the classes whose limits we hold")
+        .help("Its longest sight becomes one more limit. Your specification governs.")
+        .default("none")
+        .under(site::RULE);
+const READING_DOUBT: Field = Field::number("reading_doubt", "Doubt of a reading", Quantity::SmallLength, "0.5 mm")
+    .range(0.0, 0.1, "a reading in doubt by more than a decimetre is no reading")
+    .help("Half-width at a short distance: half a millimetre for a centimetre staff read with care (common practice, no source).")
+    .default("0.5 mm")
+    .under(site::RULE);
+const READING_GROWTH: Field =
+    Field::number("reading_growth", "What distance adds to it", Quantity::Collimation, "0.01 mm/m")
+        .range(0.0, 0.001, "beyond 1 mm/m the staff cannot be read at all")
+        .help("1 mm in 100 m for an ordinary telescope in still air (common practice, no source).")
+        .default("0.01 mm/m")
+        .under(site::RULE);
+const fn promise(name: &'static str, label: &'static str, meaning: &'static str) -> Promise {
+    Promise { name, label, meaning }
+}
+const BIAS: Promise = promise(
+    "bias",
+    "Bias",
+    "what the reading, or the difference of the two, is expected to be out by; + reads too much",
+);
+const DOUBT: Promise =
+    promise("doubt", "Doubt", "95 % half-width about the bias; the greater side where the two differ");
+const CURVATURE: Promise = promise("curvature", "Curvature", "what the earth's curve adds to the reading");
+const REFRACTION: Promise =
+    promise("refraction", "Refraction", "what the bent line adds to the reading; − where it bends down, k > 0");
+const COLLIMATION_PART: Promise =
+    promise("collimation_part", "Collimation", "what the level's own error adds to the reading");
+const READING_PART: Promise = promise("reading_part", "Reading", "doubt of the reading itself");
+const DISTANCE_PART: Promise = promise("distance_part", "Distance", "doubt because the distance is not known exactly");
+const K_USED: Promise = promise("k", "k in force", "coefficient of refraction reckoned with, and its range");
+const REACH_UNCORRECTED: Promise = promise(
+    "reach_uncorrected",
+    "Reach, nothing corrected",
+    "longest sight whose bias and doubt are within the allowance",
+);
+const REACH_CORRECTED: Promise =
+    promise("reach_corrected", "Reach, correction applied", "longest sight whose doubt alone is within the allowance");
+const OTHER_SHORTEST: Promise =
+    promise("other_shortest", "Other sight at least", "shortest other sight that still balances this one");
+const OTHER_LONGEST: Promise =
+    promise("other_longest", "Other sight at most", "longest other sight that still balances this one");
+const BOTH_WAYS: Promise = promise(
+    "both_ways",
+    "Doubt when observed both ways",
+    "95 % half-width of the mean of the differences seen from both ends",
+);
+
+fn answer(asked: &Asked, answer: &mut Answer) {
+    site::doubt_k(asked, answer);
+    if let Some(first) = asked.problems.first() {
+        answer.verdict.word = decide::NOT_KNOWN;
+        answer.verdict.sentence = first.message.clone();
+        return;
+    }
+    let case = Case::of(asked, site::sky(asked));
+    let limits = limit::all(asked, &case);
+    decide::decide(asked, &case, &limits, answer);
+    sheet::fill(asked, &case, &limits, answer);
+    answer.figure = Some(figure::draw(asked, &case));
+}

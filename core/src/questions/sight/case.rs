@@ -1,0 +1,99 @@
+//! The sight as entered, and what it loses at any distance.
+
+use super::{
+    COLLIMATION, COLLIMATION_DOUBT, DISTANCE_DOUBT, K_SHARED, OTHER, READING_DOUBT, READING_GROWTH, SHARE, TOLERANCE,
+};
+use crate::air::guide::Sky;
+use crate::doubt::Estimate;
+use crate::quantity::{Metres, Tilt};
+use crate::question::{Asked, site};
+use crate::sight::bounds::{Stretch, stretches};
+use crate::sight::budget::{Budget, Part, Term, total};
+
+/// Edges of the search for limits, metres. Below the first no level stands; the second is the longest distance read.
+pub const SEARCH: (f64, f64) = (0.1, site::FARTHEST);
+
+pub struct Case {
+    pub budget: Budget,
+    pub air: site::AirInForce,
+    pub distance: f64,
+    pub other: Option<f64>,
+    /// Share × tolerance.
+    pub allowed: f64,
+    pub tolerance: f64,
+    pub share: f64,
+}
+
+/// What counts against the allowance.
+#[derive(Clone, Copy, PartialEq)]
+pub enum Count {
+    All,
+    DoubtOnly,
+    One(Term),
+}
+
+impl Case {
+    pub fn of(asked: &Asked, sky: Sky) -> Case {
+        let air = site::air(asked, sky);
+        let (radius, radius_doubt) = site::radius(asked);
+        let budget = Budget {
+            k: air.k,
+            common: asked.must(&K_SHARED),
+            radius,
+            radius_doubt,
+            collimation: Tilt(asked.number(&COLLIMATION).unwrap_or(0.0)),
+            collimation_doubt: Tilt(asked.must(&COLLIMATION_DOUBT)),
+            reading: Metres(asked.must(&READING_DOUBT)),
+            reading_growth: Tilt(asked.must(&READING_GROWTH)),
+            distance_doubt: asked.must(&DISTANCE_DOUBT),
+        };
+        let (tolerance, share) = (asked.must(&TOLERANCE), asked.must(&SHARE));
+        let distance = asked.must(&site::DISTANCE);
+        Case { budget, air, distance, other: asked.number(&OTHER), allowed: share * tolerance, tolerance, share }
+    }
+    /// Every term at distance `d`, with the other sight as entered.
+    pub fn parts(&self, d: f64) -> [Part; 5] {
+        match self.other {
+            Some(other) => self.budget.setup(Metres(d), Metres(other)),
+            None => self.budget.sight(Metres(d)),
+        }
+    }
+    pub fn error(&self, d: f64) -> Estimate {
+        total(&self.parts(d))
+    }
+    pub fn balanced(&self, other: f64) -> Estimate {
+        total(&self.budget.setup(Metres(self.distance), Metres(other)))
+    }
+    pub fn both_ways(&self) -> Estimate {
+        total(&self.budget.both_ways(Metres(self.distance)))
+    }
+    /// The distances at which what counts stays within the allowance.
+    pub fn bounds(&self, count: Count) -> Vec<Stretch> {
+        let at = [self.distance, self.other.unwrap_or(self.distance)];
+        stretches(SEARCH.0, SEARCH.1, &at, |d| {
+            let parts = self.parts(d);
+            let worst = match count {
+                Count::All => total(&parts).worst(),
+                Count::DoubtOnly => total(&parts).corrected().worst(),
+                Count::One(term) => parts.iter().filter(|p| p.term == term).map(|p| p.error.worst()).sum(),
+            };
+            worst - self.allowed
+        })
+    }
+    /// The stretch that says how far this sight may run: the one that holds the other sight, else the first.
+    pub fn reach(&self, count: Count) -> Option<Stretch> {
+        let all = self.bounds(count);
+        let held = self.other.and_then(|o| all.iter().find(|s| s.holds(o)));
+        held.or(all.first()).copied()
+    }
+    /// How short and how long the other sight may be for this one: the stretch about equal sights.
+    pub fn other_range(&self) -> Option<Stretch> {
+        let all = stretches(SEARCH.0, SEARCH.1, &[self.distance], |other| self.balanced(other).worst() - self.allowed);
+        all.into_iter().find(|s| s.holds(self.distance))
+    }
+    /// The longest setup with equal sights.
+    pub fn equal_reach(&self) -> Option<Stretch> {
+        let excess = |d: f64| total(&self.budget.setup(Metres(d), Metres(d))).worst() - self.allowed;
+        stretches(SEARCH.0, SEARCH.1, &[self.distance], excess).first().copied()
+    }
+}

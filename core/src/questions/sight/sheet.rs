@@ -1,0 +1,248 @@
+//! Results, tables and the working: what the decision rests on, to be checked with a pencil.
+
+use super::case::{Case, Count, SEARCH};
+use super::limit::{End, Limit};
+use super::*;
+use crate::doubt::Estimate;
+use crate::quantity::show::{Round, Show, Shown, places};
+use crate::question::answer::Table;
+use crate::sight::bounds::Stretch;
+use crate::sight::budget::{Part, Term};
+
+/// Fills in everything below the verdict.
+pub fn fill(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer) {
+    let show = asked.show();
+    let parts = case.parts(case.distance);
+    let error = case.error(case.distance);
+    results(case, &parts, error, show, answer);
+    reaches(case, show, answer);
+    answer.tables.push(terms(limits, show));
+    answer.tables.push(contributions(&parts, error, show));
+    working(case, &parts, error, show, answer);
+    notes(asked, case, answer);
+}
+
+/// What an error does to a reading, in words.
+pub fn effect(bias: f64, show: Show) -> String {
+    let size = show.own(bias.abs());
+    match bias {
+        b if b > 0.0 => format!("reads {size} too much: the point is {size} higher than booked"),
+        b if b < 0.0 => format!("reads {size} too little: the point is {size} lower than booked"),
+        _ => "does nothing to the reading".to_owned(),
+    }
+}
+
+/// What an error does to the difference of the two readings of a setup, in words.
+fn effect_on_pair(bias: f64, show: Show) -> String {
+    let size = show.own(bias.abs());
+    match bias {
+        b if b > 0.0 => format!("this sight reads {size} too much against the other"),
+        b if b < 0.0 => format!("this sight reads {size} too little against the other"),
+        _ => "falls out of the difference".to_owned(),
+    }
+}
+
+fn results(case: &Case, parts: &[Part; 5], error: Estimate, show: Show, answer: &mut Answer) {
+    let words = |bias| if case.other.is_some() { effect_on_pair(bias, show) } else { effect(bias, show) };
+    let grain = if error.half() > 0.0 { error.half() } else { error.bias };
+    answer.result(&BIAS, Some(error.bias), show.small(error.bias, grain), None, words(error.bias));
+    let lopsided = if error.lopsided() {
+        format!("{} about the bias: k is lopsided", site::doubt_words(&error, show).text)
+    } else {
+        "95 times in 100 the error lies within it of the bias".to_owned()
+    };
+    answer.result(&DOUBT, Some(error.half()), show.small(error.half(), grain), None, lopsided);
+    for Part { term, error } in parts {
+        let promise = match term {
+            Term::Curvature => &CURVATURE,
+            Term::Refraction => &REFRACTION,
+            Term::Collimation => &COLLIMATION_PART,
+            Term::Reading => &READING_PART,
+            Term::Distance => &DISTANCE_PART,
+        };
+        match term {
+            Term::Reading | Term::Distance => {
+                answer.result(promise, Some(error.half()), show.own(error.half()), None, promise.meaning.to_owned());
+            }
+            Term::Curvature | Term::Refraction | Term::Collimation => {
+                let shown = show.small(
+                    error.bias,
+                    if error.half() > 0.0 { error.half().min(error.bias.abs().max(1e-4)) } else { error.bias },
+                );
+                answer.result(
+                    promise,
+                    Some(error.bias),
+                    shown,
+                    Some(site::doubt_words(error, show)),
+                    words(error.bias),
+                );
+            }
+        }
+    }
+    site::k_result(&K_USED, &case.air, show, answer);
+}
+
+fn reaches(case: &Case, show: Show, answer: &mut Answer) {
+    let words = |text: &str| Shown { text: text.to_owned(), unit: "" };
+    let end = |d: f64, round| show.distance(d, round);
+    for (promise, count) in [(&REACH_UNCORRECTED, Count::All), (&REACH_CORRECTED, Count::DoubtOnly)] {
+        match case.reach(count) {
+            None => answer.result(promise, None, words("none"), None, "no distance is acceptable".to_owned()),
+            Some(s) if s.open_above => {
+                let meaning = format!("no distance is a limit, up to {}", end(SEARCH.1, Round::Near));
+                answer.result(promise, None, words("no limit"), None, meaning);
+            }
+            Some(s) => answer.result(promise, Some(s.to), end(s.to, Round::Down), None, promise.meaning.to_owned()),
+        }
+    }
+    let range = case.other_range();
+    let no_range = "not even an equal other sight keeps this one within the allowance";
+    let open_end = |s: Stretch, below: bool| if below { s.open_below } else { s.open_above };
+    for (promise, below) in [(&OTHER_SHORTEST, true), (&OTHER_LONGEST, false)] {
+        match range {
+            None => answer.result(promise, None, words("none"), None, no_range.to_owned()),
+            Some(s) if open_end(s, below) => {
+                answer.result(promise, None, words("no limit"), None, "any length will do on this side".to_owned())
+            }
+            Some(s) => {
+                let (d, round) = if below { (s.from, Round::Up) } else { (s.to, Round::Down) };
+                answer.result(promise, Some(d), end(d, round), None, promise.meaning.to_owned());
+            }
+        }
+    }
+    let both = case.both_ways();
+    let meaning = format!("{}; curvature and collimation cancel", BOTH_WAYS.meaning);
+    answer.result(&BOTH_WAYS, Some(both.half()), show.own(both.half()), None, meaning);
+}
+
+fn terms(limits: &[Limit], show: Show) -> Table {
+    let rows = limits.iter().map(|l| {
+        let end = match l.end {
+            End::At(d) => show.distance(d, Round::Down).to_string(),
+            End::Never => "no limit".to_owned(),
+            End::Always => "none will do".to_owned(),
+        };
+        vec![l.name.to_owned(), end, l.why.clone()]
+    });
+    let columns = ["Limit", "Distance", "Because"].map(str::to_owned).to_vec();
+    Table {
+        name: "terms",
+        caption: "What limits this sight, the ruling one first".to_owned(),
+        columns,
+        rows: rows.collect(),
+    }
+}
+
+fn contributions(parts: &[Part; 5], error: Estimate, show: Show) -> Table {
+    let unit = show.small_unit(error.worst()).symbol;
+    let cell = |si: f64, grain: f64| show.small(si, grain.max(error.half() / 100.0)).text;
+    let row = |name: &str, e: &Estimate| {
+        let grain = if e.half() > 0.0 { e.half() } else { e.bias.abs() };
+        vec![name.to_owned(), cell(e.bias, grain), cell(e.below, grain), cell(e.above, grain)]
+    };
+    let mut rows: Vec<Vec<String>> = parts.iter().map(|p| row(name(p.term), &p.error)).collect();
+    rows.push(row("Together", &error));
+    let columns = vec![
+        "Term".to_owned(),
+        format!("Bias, {unit}"),
+        format!("Doubt below, {unit}"),
+        format!("Doubt above, {unit}"),
+    ];
+    Table { name: "parts", caption: "What each term puts into the reading".to_owned(), columns, rows }
+}
+
+/// Name of a term on the sheet.
+pub fn name(term: Term) -> &'static str {
+    match term {
+        Term::Curvature => CURVATURE.label,
+        Term::Refraction => REFRACTION.label,
+        Term::Collimation => COLLIMATION_PART.label,
+        Term::Reading => READING_PART.label,
+        Term::Distance => DISTANCE_PART.label,
+    }
+}
+
+fn working(case: &Case, parts: &[Part; 5], error: Estimate, show: Show, answer: &mut Answer) {
+    let (d, r, k) = (case.distance, case.budget.radius.0, case.budget.k);
+    let mm = |si: f64| places(si * 1000.0, 3);
+    let m = |si: f64| places(si, if si < 1000.0 { 2 } else { 0 });
+    let lines = &mut answer.working;
+    lines.push(format!(
+        "D = {} m, R = {} m, k = {} (from {} to {}), {}",
+        m(d),
+        m(r),
+        show.k(k.value.0),
+        show.k(k.low.0),
+        show.k(k.high.0),
+        case.air.source
+    ));
+    let squares = match case.other {
+        Some(other) => {
+            lines.push(format!("D′ = {} m, the other sight; D² − D′² = {} m²", m(other), m(d * d - other * other)));
+            d * d - other * other
+        }
+        None => d * d,
+    };
+    let curve = squares / (2.0 * r);
+    let (what, length) = if case.other.is_some() { ("(D² − D′²)", "(D − D′)") } else { ("D²", "D") };
+    lines.push(format!("curvature = {what} / 2R = {} / {} = {} mm", m(squares), m(2.0 * r), mm(curve)));
+    lines.push(format!(
+        "refraction = −k · curvature = −({}) × {} = {} mm",
+        show.k(k.value.0),
+        mm(curve),
+        mm(-k.value.0 * curve)
+    ));
+    let alpha = case.budget.collimation.0;
+    let run = case.other.map_or(d, |other| d - other);
+    lines.push(format!(
+        "collimation = α · {length} = {} mm/m × {} m = {} mm",
+        places(alpha * 1000.0, 3),
+        m(run),
+        mm(alpha * run)
+    ));
+    lines.push(format!(
+        "bias = sum of the three = {} mm (exact forms: {} mm)",
+        mm((1.0 - k.value.0) * curve + alpha * run),
+        mm(error.bias)
+    ));
+    for (side, pick) in [("above", true), ("below", false)] {
+        let halves: Vec<String> =
+            parts.iter().map(|p| format!("{}²", mm(if pick { p.error.above } else { p.error.below }))).collect();
+        let whole = if pick { error.above } else { error.below };
+        lines.push(format!("doubt {side} = √({}) = {} mm", halves.join(" + "), mm(whole)));
+    }
+    let sign = if error.worst() <= case.allowed { "≤" } else { ">" };
+    lines.push(format!(
+        "farther end = {} mm {sign} {} % of {} mm = {} mm",
+        mm(error.worst()),
+        places(case.share * 100.0, 0),
+        mm(case.tolerance),
+        mm(case.allowed)
+    ));
+}
+
+fn notes(asked: &Asked, case: &Case, answer: &mut Answer) {
+    if !asked.given(&COLLIMATION) {
+        answer.note(
+            "No collimation error was entered: a peg test today would take the largest doubt out of most setups.",
+        );
+    }
+    if case.budget.k.low.0 < 1.0 && case.budget.k.high.0 >= 1.0 {
+        answer.note("k may be 1 or more here: the line may bend as much as the earth or more, and curvature is then no help in judging it.");
+    }
+    if let Some(class) = limits::class(asked.choice(&CLASS)) {
+        if let (Some(most), Some(other)) = (class.imbalance, case.other)
+            && (case.distance - other).abs() > most
+        {
+            let show = asked.show();
+            let text = format!(
+                "{} allows the two sights of a setup to differ by {} at most; these differ by {}.",
+                class.label,
+                show.distance(most, Round::Near),
+                show.distance((case.distance - other).abs(), Round::Near)
+            );
+            answer.caution(text);
+        }
+        answer.note(format!("{}. Your specification governs.", class.source));
+    }
+}

@@ -1,0 +1,78 @@
+//! Over which distances an error stays inside its limit.
+
+/// A stretch of distances, metres; `open` ends lie at the edge of what was searched.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Stretch {
+    /// From.
+    pub from: f64,
+    /// To.
+    pub to: f64,
+    /// Reaches the low edge of the search.
+    pub open_below: bool,
+    /// Reaches the high edge of the search.
+    pub open_above: bool,
+}
+
+impl Stretch {
+    /// Holds this distance.
+    pub fn holds(&self, d: f64) -> bool {
+        self.from <= d && d <= self.to
+    }
+}
+
+/// Steps of the search between its edges, evenly spaced in the logarithm: about 7 % each over 0.1 m to 200 km.
+const STEPS: u32 = 200;
+
+/// The stretches of `low..=high` in which `excess` ≤ 0, ends found to the last bit.
+///
+/// `at` are distances that have to be looked at besides the steps: where a narrow stretch may lie. A stretch narrower
+/// than a step that holds none of them may be missed; a bump narrower than a step may be passed over.
+pub fn stretches(low: f64, high: f64, at: &[f64], excess: impl Fn(f64) -> f64) -> Vec<Stretch> {
+    let ratio = libm::log(high / low) / f64::from(STEPS);
+    let mut places: Vec<f64> = (0..=STEPS).map(|i| low * libm::exp(ratio * f64::from(i))).collect();
+    places.extend(at.iter().copied().filter(|d| *d > low && *d < high));
+    places.sort_by(f64::total_cmp);
+    let within = |d: f64| excess(d) <= 0.0;
+    let edge = |mut inside: f64, mut outside: f64| {
+        loop {
+            let middle = f64::midpoint(inside, outside);
+            if middle == inside || middle == outside {
+                return inside;
+            }
+            if within(middle) {
+                inside = middle;
+            } else {
+                outside = middle;
+            }
+        }
+    };
+    let mut found: Vec<Stretch> = vec![];
+    let mut before: Option<(f64, bool)> = None;
+    for d in places {
+        let ok = within(d);
+        match (before, ok) {
+            (None, true) => found.push(Stretch { from: d, to: d, open_below: true, open_above: false }),
+            (Some((last, false)), true) => {
+                let from = edge(d, last);
+                found.push(Stretch { from, to: d, open_below: false, open_above: false });
+            }
+            (Some((last, true)), false) => {
+                let to = edge(last, d);
+                if let Some(open) = found.last_mut() {
+                    open.to = to;
+                }
+            }
+            (Some((_, true)), true) => {
+                if let Some(open) = found.last_mut() {
+                    open.to = d;
+                }
+            }
+            _ => {}
+        }
+        before = Some((d, ok));
+    }
+    if let (Some((_, true)), Some(open)) = (before, found.last_mut()) {
+        open.open_above = true;
+    }
+    found
+}
