@@ -47,11 +47,16 @@ fn magnitude(value: f64) -> i32 {
 
 /// Places that leave `digits` significant digits of `grain`, at most 9.
 pub fn fitting(grain: f64, digits: i32) -> usize {
-    if grain == 0.0 { 2 } else { (digits - 1 - magnitude(grain)).clamp(0, 9) as usize }
+    if grain == 0.0 { 0 } else { (digits - 1 - magnitude(grain)).clamp(0, 9) as usize }
 }
 
-/// Whole digits for what has been rounded to so many significant ones, plain notation, trailing zeros after the point off.
+/// `value` to so many significant digits, in plain notation, without trailing zeros after the point.
 pub fn significant(value: f64, digits: i32) -> String {
+    let spare = magnitude(value) + 1 - digits;
+    if spare > 0 {
+        let step = libm::pow(10.0, f64::from(spare));
+        return places(libm::round(value / step) * step, 0);
+    }
     let text = places(value, fitting(value, digits));
     if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.').to_owned() } else { text }
 }
@@ -96,8 +101,8 @@ impl Show {
         let long = Quantity::Distance.unit(if usual.symbol == "m" { "km" } else { "mi" }).unwrap_or(usual);
         let unit = if in_unit(si, &long).abs() >= 10.0 { long } else { usual };
         let value = in_unit(si, &unit);
-        let shown = fitting(value, 3).min(1);
-        let step = if shown == 1 { 0.1 } else { libm::pow(10.0, f64::from((magnitude(value) - 2).max(0))) };
+        let places_left = (2 - magnitude(value)).min(1);
+        let step = libm::pow(10.0, -f64::from(places_left));
         let steps = value / step;
         let whole = match round {
             Round::Near => libm::round(steps),
@@ -105,8 +110,11 @@ impl Show {
             Round::Down => libm::floor(steps * (1.0 + 1e-12)),
             Round::Up => libm::ceil(steps * (1.0 - 1e-12)),
         };
-        let text = places(whole * step, shown);
-        let text = text.strip_suffix(".0").map_or(text.clone(), str::to_owned);
+        let text = places(whole * step, places_left.max(0) as usize);
+        let text = match (round, text.strip_suffix(".0")) {
+            (Round::Near, Some(short)) => short.to_owned(),
+            _ => text,
+        };
         Shown { text, unit: unit.symbol }
     }
     /// A tilt of the line, mm/m and seconds of arc.

@@ -101,7 +101,7 @@ impl Asked {
         let text = if given { text } else { field.default };
         if text.is_empty() {
             if field.required {
-                self.problem(field, format!("Choose {}.", lower(field.label)), vec![]);
+                self.problem(field, format!("Choose one for “{}”.", field.label), vec![]);
                 return None;
             }
             return Some(String::new());
@@ -133,7 +133,7 @@ impl Asked {
         let text = if given { text } else { field.default };
         if text.is_empty() {
             if field.required {
-                self.problem(field, format!("Enter {}.", lower(field.label)), vec![]);
+                self.problem(field, format!("Enter {}.", the(field.label)), vec![]);
                 return None;
             }
             return Some(String::new());
@@ -141,7 +141,7 @@ impl Asked {
         let picked = if given { picked } else { "" };
         match entered::read(field, quantity, self.system, text, picked) {
             Ok(Entered { number, unit, bare, si }) => {
-                if let Some(also) = &number.also {
+                if let Some(also) = number.also.as_ref().filter(|also| entered::fits(field, &unit, also)) {
                     let fix = Fix {
                         label: format!("It is {also}"),
                         field: field.name,
@@ -227,8 +227,14 @@ fn choose(field: &Field, text: &str) -> Result<&'static str, String> {
     found.map(|o| o.value).ok_or_else(|| options.iter().map(|o| o.label).collect::<Vec<_>>().join(", "))
 }
 
+/// A label inside a sentence, with its article.
+fn the(label: &str) -> String {
+    let label = lower(label);
+    if label.starts_with("the ") { label } else { format!("the {label}") }
+}
+
 /// A label inside a sentence.
-pub(super) fn lower(label: &str) -> String {
+fn lower(label: &str) -> String {
     let mut letters = label.chars();
     match (letters.next(), label.chars().nth(1)) {
         (Some(first), Some(second)) if second.is_lowercase() => first.to_lowercase().chain(letters).collect(),

@@ -183,7 +183,7 @@ fn verdict(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mu
             );
         }
         "raw" => {
-            verdict.word = if bias < 0.0 { "Add to it" } else { "Take off it" };
+            verdict.word = if bias < 0.0 { "Add" } else { "Take off" };
             verdict.number = size.to_string();
             verdict.state = if swamped { State::Doubtful } else { State::Within };
             let corrected = show.height(corrected);

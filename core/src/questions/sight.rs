@@ -162,7 +162,7 @@ const READING_DOUBT: Field = Field::number("reading_doubt", "Doubt of a reading"
     .default("0.5 mm")
     .under(site::RULE);
 const READING_GROWTH: Field =
-    Field::number("reading_growth", "What distance adds to it", Quantity::Collimation, "0.01 mm/m")
+    Field::number("reading_growth", "Growth of that doubt with distance", Quantity::Collimation, "0.01 mm/m")
         .range(0.0, 0.001, "beyond 1 mm/m the staff cannot be read at all")
         .help("1 mm in 100 m for an ordinary telescope in still air (common practice, no source).")
         .default("0.01 mm/m")

@@ -1,6 +1,6 @@
 //! One number as it was entered: its digits, its unit, its SI value, and what to do where one of them is missing.
 
-use super::{Field, Fix, clip, lower};
+use super::{Field, Fix, clip, the};
 use crate::quantity::number::{self, NotANumber, Number};
 use crate::quantity::show::{Shown, significant};
 use crate::quantity::unit::{Quantity, System, Unit};
@@ -108,18 +108,18 @@ fn unreadable(field: &'static Field, text: &str, unit: &Unit, why: NotANumber) -
     let text = clip(text);
     match why {
         NotANumber::Unreadable => {
-            let message = format!("“{text}” is not a number. Enter {} as in {}.", lower(field.label), field.example);
+            let message = format!("“{text}” is not a number. Enter {} as in {}.", the(field.label), field.example);
             (message, vec![])
         }
         NotANumber::Separators(meant) => {
             let message =
-                format!("“{text}” has more than one point or comma. Enter {} with one of them.", lower(field.label));
+                format!("“{text}” has more than one point or comma. Enter {} with one of them.", the(field.label));
             (message, meant.iter().map(|m| fix(field, m, unit)).collect())
         }
         NotANumber::OutOfReach => {
             let message = format!(
                 "“{text}” is no number that can be worked with. Enter {} as in {}.",
-                lower(field.label),
+                the(field.label),
                 field.example
             );
             (message, vec![])
@@ -130,13 +130,13 @@ fn unreadable(field: &'static Field, text: &str, unit: &Unit, why: NotANumber) -
 fn no_unit(field: &'static Field, quantity: Quantity, digits: &str, unit: &str) -> Wrong {
     if digits.is_empty() {
         return (
-            format!("“{}” is not a number. Enter {} as in {}.", clip(unit), lower(field.label), field.example),
+            format!("“{}” is not a number. Enter {} as in {}.", clip(unit), the(field.label), field.example),
             vec![],
         );
     }
     let symbols: Vec<&str> = quantity.info().units.iter().map(|u| u.symbol).collect();
     let fixes = symbols.iter().filter_map(|s| quantity.unit(s)).take(2).map(|u| fix(field, digits, &u)).collect();
-    let message = format!("“{}” is no unit of {}. Use {}.", clip(unit), lower(field.label), listed(&symbols));
+    let message = format!("“{}” is no unit of {}. Use {}.", clip(unit), the(field.label), listed(&symbols));
     (message, if number::number(digits).is_ok() { fixes } else { vec![] })
 }
 
@@ -147,6 +147,12 @@ fn listed(words: &[&str]) -> String {
         [one] => (*one).to_owned(),
         [most @ .., last] => format!("{} or {last}", most.join(", ")),
     }
+}
+
+/// This number in this unit lies within the field's range.
+pub fn fits(field: &Field, unit: &Unit, number: &str) -> bool {
+    let Kind::Number { min, max, .. } = field.kind else { return false };
+    number.parse().ok().and_then(|v| unit.to_si(v)).is_some_and(|si| si >= min && si <= max)
 }
 
 /// Between the ends of its range, else what range that is, why, and in which other unit the number would fit.
@@ -165,14 +171,13 @@ fn in_range(
     let end = |si: f64| end_of_range(quantity, system, si);
     let message = format!("{} must be between {} and {}: {why}.", field.label, end(min), end(max));
     let mut fixes = vec![];
-    let fits = |value: f64, u: &Unit| u.to_si(value).is_some_and(|si| si >= min && si <= max);
     if let Some(also) = &number.also
-        && also.parse().is_ok_and(|v| fits(v, unit))
+        && fits(field, unit, also)
     {
         fixes.push(fix(field, also, unit));
     }
     let others = quantity.info().units.iter().filter_map(|u| quantity.unit(u.symbol));
-    let others = others.filter(|u| u.symbol != unit.symbol && !number.sexagesimal && fits(number.value, u));
+    let others = others.filter(|u| u.symbol != unit.symbol && !number.sexagesimal && fits(field, u, &number.text));
     fixes.extend(others.take(2).map(|u| fix(field, &number.text, &u)));
     Err((message, fixes))
 }

@@ -67,7 +67,7 @@ pub fn all(asked: &Asked, case: &Case) -> Vec<Limit> {
         limits.push(Limit {
             name: "sight limit of the class",
             end: End::At(class.sight),
-            why: format!("{}: {}", class.label, class.source),
+            why: format!("{} ends", class.label),
             alone: false,
         });
     }

@@ -14,7 +14,7 @@ pub fn fill(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer) {
     let show = asked.show();
     let parts = case.parts(case.distance);
     let error = case.error(case.distance);
-    results(case, &parts, error, show, answer);
+    results(case, &parts, asked.number(&COLLIMATION).is_some(), show, answer);
     reaches(case, show, answer);
     answer.tables.push(terms(limits, show));
     answer.tables.push(contributions(&parts, error, show));
@@ -42,12 +42,13 @@ fn effect_on_pair(bias: f64, show: Show) -> String {
     }
 }
 
-fn results(case: &Case, parts: &[Part; 5], error: Estimate, show: Show, answer: &mut Answer) {
+fn results(case: &Case, parts: &[Part; 5], known: bool, show: Show, answer: &mut Answer) {
+    let error = case.error(case.distance);
     let words = |bias| if case.other.is_some() { effect_on_pair(bias, show) } else { effect(bias, show) };
     let grain = if error.half() > 0.0 { error.half() } else { error.bias };
     answer.result(&BIAS, Some(error.bias), show.small(error.bias, grain), None, words(error.bias));
     let lopsided = if error.lopsided() {
-        format!("{} about the bias: k is lopsided", site::doubt_words(&error, show).text)
+        format!("the error lies {}: the range of k is lopsided", site::doubt_words(&error, show).text)
     } else {
         "95 times in 100 the error lies within it of the bias".to_owned()
     };
@@ -63,6 +64,16 @@ fn results(case: &Case, parts: &[Part; 5], error: Estimate, show: Show, answer: 
         match term {
             Term::Reading | Term::Distance => {
                 answer.result(promise, Some(error.half()), show.own(error.half()), None, promise.meaning.to_owned());
+            }
+            Term::Collimation if !known => {
+                let meaning = "not known: only its doubt counts".to_owned();
+                answer.result(
+                    promise,
+                    Some(0.0),
+                    show.small(0.0, error.half()),
+                    Some(site::doubt_words(error, show)),
+                    meaning,
+                );
             }
             Term::Curvature | Term::Refraction | Term::Collimation => {
                 let shown = show.small(
@@ -227,8 +238,8 @@ fn notes(asked: &Asked, case: &Case, answer: &mut Answer) {
             "No collimation error was entered: a peg test today would take the largest doubt out of most setups.",
         );
     }
-    if case.budget.k.low.0 < 1.0 && case.budget.k.high.0 >= 1.0 {
-        answer.note("k may be 1 or more here: the line may bend as much as the earth or more, and curvature is then no help in judging it.");
+    if case.budget.k.value.0 >= 1.0 {
+        answer.note("At this k the line bends as much as the earth or more: it never rises off the level surface.");
     }
     if let Some(class) = limits::class(asked.choice(&CLASS)) {
         if let (Some(most), Some(other)) = (class.imbalance, case.other)
