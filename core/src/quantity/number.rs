@@ -45,13 +45,13 @@ pub fn split(text: &str) -> (String, String) {
             && next(i).is_some_and(|n| {
                 n.is_ascii_digit() || (matches!(n, '-' | '+') && bytes.get(i + 2).is_some_and(|b| b.1.is_ascii_digit()))
             });
-        let sign_of_exponent =
-            matches!(c, '-' | '+') && i > 0 && bytes.get(i - 1).is_some_and(|b| matches!(b.1, 'e' | 'E'));
+        let sign_within =
+            matches!(c, '-' | '+') && i > 0 && bytes.get(i - 1).is_some_and(|b| matches!(b.1, 'e' | 'E' | '/' | ':'));
         let ok = c.is_ascii_digit()
             || matches!(c, '.' | ',' | '/' | ':' | ' ')
             || (matches!(c, '-' | '+') && end == 0)
             || exponent
-            || sign_of_exponent;
+            || sign_within;
         if !ok {
             break;
         }
@@ -145,7 +145,9 @@ pub fn sexagesimal(text: &str) -> Option<Result<Number, NotANumber>> {
     for (sign, scale) in [('°', 1.0), ('′', 60.0), ('″', 3600.0)] {
         if let Some((part, after)) = rest.split_once(sign) {
             match number(part) {
-                Ok(n) if n.value >= 0.0 && (!seen || n.value < 60.0) => value += n.value / scale,
+                Ok(n) if n.value >= 0.0 && !n.text.contains('/') && (!seen || n.value < 60.0) => {
+                    value += n.value / scale
+                }
                 Err(e @ NotANumber::Separators(_)) => return Some(Err(e)),
                 _ => return Some(Err(NotANumber::Unreadable)),
             }

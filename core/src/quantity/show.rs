@@ -75,10 +75,14 @@ impl Show {
         let quantity = if si.abs() >= 10.0 { Quantity::Height } else { Quantity::SmallLength };
         quantity.usual(self.0)
     }
-    /// A small length to two significant digits of `grain` (its doubt, or itself).
+    /// A small length to two significant digits of `grain` (its doubt, or itself); to one of its own where those would
+    /// make it look like nothing.
     pub fn small(self, si: f64, grain: f64) -> Shown {
         let unit = self.small_unit(si.abs().max(grain.abs()));
-        Shown { text: places(in_unit(si, &unit), fitting(in_unit(grain, &unit), 2)), unit: unit.symbol }
+        let value = in_unit(si, &unit);
+        let places_of_grain = fitting(in_unit(grain, &unit), 2);
+        let vanishes = value != 0.0 && !places(value, places_of_grain).contains(|c: char| ('1'..='9').contains(&c));
+        Shown { text: places(value, if vanishes { fitting(value, 1) } else { places_of_grain }), unit: unit.symbol }
     }
     /// A small length to two significant digits of its own.
     pub fn own(self, si: f64) -> Shown {
@@ -122,8 +126,8 @@ impl Show {
         let seconds = Quantity::Collimation.unit("″").and_then(|u| u.from_si(rise)).unwrap_or(0.0);
         format!("{}\u{a0}mm/m, {}″", significant(rise * 1000.0, 2), significant(seconds, 2))
     }
-    /// k to two places, or two significant digits where it is small.
+    /// k to three significant digits, two where it is small.
     pub fn k(self, k: f64) -> String {
-        if k.abs() >= 0.1 { significant(k, 3) } else { places(k, 2) }
+        significant(k, if k.abs() >= 0.1 { 3 } else { 2 })
     }
 }

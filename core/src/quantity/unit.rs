@@ -117,7 +117,7 @@ const PER_ONE: Unit = unit("of 1", &[], 1.0, 1.0);
 const RATIO: Unit = unit("m/m", &[], 1.0, 1.0);
 const FT_PER_100_FT: Unit = unit("ft/100 ft", &["ft/100ft"], 1.0, 100.0);
 const ARC_SECOND: Unit =
-    Unit { symbol: "″", also: &["\"", "''", "arcsec", "sec"], scale: Scale::TangentOf(1.0, 648_000.0) };
+    Unit { symbol: "″", also: &["\"", "''", "′′", "arcsec", "sec"], scale: Scale::TangentOf(1.0, 648_000.0) };
 const MILLIGON: Unit = Unit { symbol: "mgon", also: &["mgrad"], scale: Scale::TangentOf(1.0, 200_000.0) };
 const DEGREE: Unit = Unit { symbol: "°", also: &["deg", "º"], scale: Scale::TangentOf(1.0, 180.0) };
 const GON: Unit = Unit { symbol: "gon", also: &["grad", "g"], scale: Scale::TangentOf(1.0, 200.0) };
