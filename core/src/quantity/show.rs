@@ -75,12 +75,14 @@ impl Show {
         let quantity = if si.abs() >= 10.0 { Quantity::Height } else { Quantity::SmallLength };
         quantity.usual(self.0)
     }
-    /// A small length to two significant digits of `grain` (its doubt, or itself); to one of its own where those would
-    /// make it look like nothing.
+    /// A small length to two significant digits of `grain` (its doubt, or itself).
     pub fn small(self, si: f64, grain: f64) -> Shown {
-        let unit = self.small_unit(si.abs().max(grain.abs()));
-        let value = in_unit(si, &unit);
-        let places_of_grain = fitting(in_unit(grain, &unit), 2);
+        self.small_in(&self.small_unit(si.abs().max(grain.abs())), si, grain)
+    }
+    /// The same in a given unit; to one digit of its own where those of `grain` would make it look like nothing.
+    pub fn small_in(self, unit: &Unit, si: f64, grain: f64) -> Shown {
+        let value = in_unit(si, unit);
+        let places_of_grain = fitting(in_unit(grain, unit), 2);
         let vanishes = value != 0.0 && !places(value, places_of_grain).contains(|c: char| ('1'..='9').contains(&c));
         Shown { text: places(value, if vanishes { fitting(value, 1) } else { places_of_grain }), unit: unit.symbol }
     }

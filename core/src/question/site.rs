@@ -65,14 +65,14 @@ pub const SKY: Field = Field::choice(
     "sky",
     "Sky",
     &[
-        Opt { value: "sunny", label: "sun on the ground" },
-        Opt { value: "overcast", label: "overcast or windy" },
-        Opt { value: "clear_night", label: "clear calm night" },
-        Opt { value: "unknown", label: "by day, not known" },
+        Opt { value: "sunny", label: "sunny" },
+        Opt { value: "overcast", label: "overcast, windy" },
+        Opt { value: "clear_night", label: "clear night" },
+        Opt { value: "unknown", label: "not known" },
     ],
     "they are what the guide of k tells apart",
 )
-.help("As it was over the last half hour.")
+.help("As it was over the last half hour: sun on the ground, cloud or wind, or a clear calm night. Not known means by day.")
 .default("unknown")
 .shared();
 
@@ -148,15 +148,18 @@ pub fn air(asked: &Asked, sky: Sky) -> AirInForce {
     AirInForce { k, source }
 }
 
-/// Doubt as shown beside a value of the same unit.
-pub fn doubt_words(error: &Estimate, show: Show) -> Doubt {
-    let text = |si: f64| show.small(si, error.half());
-    let text = if error.lopsided() {
+/// Bias and doubt of an error in one unit, each to the digits the doubt leaves it.
+pub fn with_doubt(error: &Estimate, show: Show) -> (Shown, Doubt) {
+    let unit = show.small_unit(error.worst());
+    let half = error.half();
+    let text = |si: f64| show.small_in(&unit, si, half).text;
+    let range = if error.lopsided() {
         format!("from {} to {}", text(error.bias - error.below), text(error.bias + error.above))
     } else {
-        format!("± {}", text(error.half()))
+        format!("± {}", text(half))
     };
-    Doubt { value: error.half(), text }
+    let grain = if half > 0.0 { half.min(error.bias.abs().max(half / 10.0)) } else { error.bias / 1000.0 };
+    (show.small_in(&unit, error.bias, grain), Doubt { value: half, text: range })
 }
 
 /// The result that says which k is in force.

@@ -7,7 +7,7 @@ use crate::doubt::Estimate;
 use crate::quantity::show::{Show, Shown, places};
 use crate::quantity::unit::Quantity;
 use crate::quantity::{Metres, Tilt};
-use crate::question::answer::{State, Table};
+use crate::question::answer::{Doubt, State, Table};
 use crate::question::field::{Field, Opt};
 use crate::question::{Answer, Asked, Caution, Promise, Question, site};
 use crate::ray;
@@ -169,10 +169,10 @@ const NOT_KNOWN: &str = "Not enough is known";
 
 fn verdict(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mut Answer) {
     let bias = worth.combined.bias;
-    let doubt = show.small(worth.combined.half(), worth.combined.half());
-    let size = show.small(bias.abs(), worth.combined.half().min(bias.abs()));
+    let doubt = show.own(worth.combined.half());
+    let (size, _) = site::with_doubt(&Estimate { bias: bias.abs(), ..worth.combined }, show);
     let verdict = &mut answer.verdict;
-    let swamped = worth.combined.half() >= bias.abs();
+    let way = if bias < 0.0 { "Add" } else { "Take off" };
     match asked.choice(&APPLIED) {
         "already" => {
             verdict.word = "Leave it";
@@ -182,16 +182,22 @@ fn verdict(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mu
                 "It is corrected already: {size} once more would put the error back in. What stays in doubt is {doubt}."
             );
         }
-        "raw" => {
-            verdict.word = if bias < 0.0 { "Add" } else { "Take off" };
-            verdict.number = size.to_string();
-            verdict.state = if swamped { State::Doubtful } else { State::Within };
+        // A correction smaller than its doubt must not look like a gain.
+        "raw" if worth.combined.half() >= bias.abs() && bias != 0.0 => {
+            verdict.word = "In doubt by";
+            verdict.number = doubt.to_string();
+            verdict.state = State::Doubtful;
             let corrected = show.height(corrected);
-            verdict.sentence = if swamped {
-                format!("Corrected {corrected}, but the correction is in doubt by {doubt}: more than itself.")
-            } else {
-                format!("Corrected {corrected}. What stays in doubt is {doubt}.")
-            };
+            verdict.sentence = format!(
+                "The correction is smaller than its doubt: {} {size}, which makes it {corrected}, and it is hardly better.",
+                way.to_lowercase()
+            );
+        }
+        "raw" => {
+            verdict.word = way;
+            verdict.number = size.to_string();
+            verdict.state = State::Within;
+            verdict.sentence = format!("Corrected {}. What stays in doubt is {doubt}.", show.height(corrected));
         }
         _ => {
             verdict.word = NOT_KNOWN;
@@ -205,11 +211,12 @@ fn verdict(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mu
 
 fn results(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mut Answer) {
     let combined = &worth.combined;
-    let grain = if combined.half() > 0.0 { combined.half() } else { combined.bias };
-    let fine = |si: f64| show.small(si, grain.min(si.abs()).max(f64::MIN_POSITIVE));
+    let (shown, doubt) = site::with_doubt(combined, show);
+    let unit = show.small_unit(combined.worst());
+    let fine =
+        |si: f64| show.small_in(&unit, si, if doubt.value > 0.0 { doubt.value.min(si.abs()) } else { si / 1000.0 });
     let words = |text: &str| Shown { text: text.to_owned(), unit: "" };
-    let in_height = show.height(combined.half());
-    let about = crate::question::answer::Doubt { value: combined.half(), text: format!("± {in_height}") };
+    let about = Doubt { value: combined.half(), text: format!("± {}", show.height(combined.half()).text) };
     match asked.choice(&APPLIED) {
         "raw" => answer.result(
             &CORRECTED,
@@ -242,7 +249,7 @@ fn results(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mu
         }
         _ => "the line follows the earth: nothing to correct".to_owned(),
     };
-    answer.result(&COMBINED, Some(combined.bias), fine(combined.bias), Some(site::doubt_words(combined, show)), effect);
+    answer.result(&COMBINED, Some(combined.bias), shown, Some(doubt.clone()), effect);
     answer.result(&DOUBT, Some(combined.half()), show.own(combined.half()), None, DOUBT.meaning.to_owned());
     answer.result(&CURVATURE, Some(worth.curvature), fine(worth.curvature), None, CURVATURE.meaning.to_owned());
     answer.result(&REFRACTION, Some(worth.refraction), fine(worth.refraction), None, REFRACTION.meaning.to_owned());

@@ -42,17 +42,17 @@ pub const QUESTION: Question = Question {
     results: &[
         BIAS,
         DOUBT,
+        REACH_UNCORRECTED,
+        REACH_CORRECTED,
+        OTHER_SHORTEST,
+        OTHER_LONGEST,
+        BOTH_WAYS,
         CURVATURE,
         REFRACTION,
         COLLIMATION_PART,
         READING_PART,
         DISTANCE_PART,
         K_USED,
-        REACH_UNCORRECTED,
-        REACH_CORRECTED,
-        OTHER_SHORTEST,
-        OTHER_LONGEST,
-        BOTH_WAYS,
     ],
     cautions: &[
         Caution {

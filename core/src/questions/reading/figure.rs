@@ -3,7 +3,7 @@
 use super::Worth;
 use crate::quantity::show::{Round, Show, significant};
 use crate::quantity::unit::Quantity;
-use crate::question::figure::{Figure, Mark, Series, Stroke, axis};
+use crate::question::figure::{Axis, Figure, Mark, Series, Stroke, axis};
 
 /// Points of a line.
 const POINTS: u32 = 40;
@@ -38,6 +38,8 @@ pub fn draw(worth: &Worth, show: Show) -> Figure {
     let unit = Quantity::Distance.usual(show.0);
     let small = show.small_unit(span);
     let tall = d / STAFF / (high - low) * SHAPE;
+    // Right of the staff there is no distance: only the gaps.
+    let across = axis(format!("Distance, {}", unit.symbol), 0.0, unit.from_si(d / STAFF).unwrap_or(1.0));
     let below = if worth.combined.bias < 0.0 { "below" } else { "above" };
     Figure {
         title: "The gaps at the staff".to_owned(),
@@ -49,7 +51,7 @@ pub fn draw(worth: &Worth, show: Show) -> Figure {
             if worth.refraction < 0.0 { "above" } else { "below" },
             show.own(worth.combined.bias.abs()),
         ),
-        x: axis(format!("Distance, {}", unit.symbol), 0.0, unit.from_si(d / STAFF).unwrap_or(1.0)),
+        x: Axis { ticks: across.ticks.into_iter().filter(|t| t.at <= STAFF).collect(), ..across },
         y: axis(
             format!("Against the horizontal line, {}", small.symbol),
             small.from_si(low).unwrap_or(-1.0),

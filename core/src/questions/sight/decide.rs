@@ -39,7 +39,7 @@ pub fn decide(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer)
                 verdict.number = show.distance(d, Round::Down).to_string();
                 verdict.sentence = why.clone();
                 if nearest.name == OPTICAL {
-                    verdict.sentence.push_str(&format!(" Balancing does not help: {}", sentence_of(broken, show)));
+                    verdict.sentence.push_str(&format!(" Balancing does not help. {}", sentence_of(broken, show)));
                 }
             }
             End::Never | End::Always => {

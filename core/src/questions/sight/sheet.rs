@@ -14,80 +14,56 @@ pub fn fill(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer) {
     let show = asked.show();
     let parts = case.parts(case.distance);
     let error = case.error(case.distance);
-    results(case, &parts, asked.number(&COLLIMATION).is_some(), show, answer);
+    sum(case, &error, show, answer);
     reaches(case, show, answer);
+    each(case, &parts, asked.number(&COLLIMATION).is_some(), show, answer);
     answer.tables.push(terms(limits, show));
     answer.tables.push(contributions(&parts, error, show));
     working(case, &parts, error, show, answer);
     notes(asked, case, answer);
 }
 
-/// What an error does to a reading, in words.
-pub fn effect(bias: f64, show: Show) -> String {
+/// What an error does to the reading, or to the difference of the two of a setup, in words.
+fn effect(case: &Case, bias: f64, show: Show) -> String {
     let size = show.own(bias.abs());
-    match bias {
-        b if b > 0.0 => format!("reads {size} too much: the point is {size} higher than booked"),
-        b if b < 0.0 => format!("reads {size} too little: the point is {size} lower than booked"),
-        _ => "does nothing to the reading".to_owned(),
+    match (case.other, bias) {
+        (None, b) if b > 0.0 => format!("reads {size} too much: the point is {size} higher than booked"),
+        (None, b) if b < 0.0 => format!("reads {size} too little: the point is {size} lower than booked"),
+        (None, _) => "does nothing to the reading".to_owned(),
+        (Some(_), b) if b > 0.0 => format!("this sight reads {size} too much against the other"),
+        (Some(_), b) if b < 0.0 => format!("this sight reads {size} too little against the other"),
+        (Some(_), _) => "falls out of the difference".to_owned(),
     }
 }
 
-/// What an error does to the difference of the two readings of a setup, in words.
-fn effect_on_pair(bias: f64, show: Show) -> String {
-    let size = show.own(bias.abs());
-    match bias {
-        b if b > 0.0 => format!("this sight reads {size} too much against the other"),
-        b if b < 0.0 => format!("this sight reads {size} too little against the other"),
-        _ => "falls out of the difference".to_owned(),
-    }
-}
-
-fn results(case: &Case, parts: &[Part; 5], known: bool, show: Show, answer: &mut Answer) {
-    let error = case.error(case.distance);
-    let words = |bias| if case.other.is_some() { effect_on_pair(bias, show) } else { effect(bias, show) };
-    let grain = if error.half() > 0.0 { error.half() } else { error.bias };
-    answer.result(&BIAS, Some(error.bias), show.small(error.bias, grain), None, words(error.bias));
-    let lopsided = if error.lopsided() {
-        format!("the error lies {}: the range of k is lopsided", site::doubt_words(&error, show).text)
+/// Bias and doubt of everything together.
+fn sum(case: &Case, error: &Estimate, show: Show, answer: &mut Answer) {
+    let (bias, doubt) = site::with_doubt(error, show);
+    answer.result(&BIAS, Some(error.bias), bias, None, effect(case, error.bias, show));
+    let meaning = if error.lopsided() {
+        format!("the error lies {} {}: the range of k is lopsided", doubt.text, show.small_unit(error.worst()).symbol)
     } else {
         "95 times in 100 the error lies within it of the bias".to_owned()
     };
-    answer.result(&DOUBT, Some(error.half()), show.small(error.half(), grain), None, lopsided);
+    answer.result(&DOUBT, Some(error.half()), show.own(error.half()), None, meaning);
+}
+
+/// Bias and doubt of each term.
+fn each(case: &Case, parts: &[Part; 5], known: bool, show: Show, answer: &mut Answer) {
     for Part { term, error } in parts {
-        let promise = match term {
-            Term::Curvature => &CURVATURE,
-            Term::Refraction => &REFRACTION,
-            Term::Collimation => &COLLIMATION_PART,
-            Term::Reading => &READING_PART,
-            Term::Distance => &DISTANCE_PART,
+        let (promise, meaning) = match term {
+            Term::Curvature => (&CURVATURE, effect(case, error.bias, show)),
+            Term::Refraction => (&REFRACTION, effect(case, error.bias, show)),
+            Term::Collimation if known => (&COLLIMATION_PART, effect(case, error.bias, show)),
+            Term::Collimation => (&COLLIMATION_PART, "not known: only its doubt counts".to_owned()),
+            Term::Reading => (&READING_PART, READING_PART.meaning.to_owned()),
+            Term::Distance => (&DISTANCE_PART, DISTANCE_PART.meaning.to_owned()),
         };
-        match term {
-            Term::Reading | Term::Distance => {
-                answer.result(promise, Some(error.half()), show.own(error.half()), None, promise.meaning.to_owned());
-            }
-            Term::Collimation if !known => {
-                let meaning = "not known: only its doubt counts".to_owned();
-                answer.result(
-                    promise,
-                    Some(0.0),
-                    show.small(0.0, error.half()),
-                    Some(site::doubt_words(error, show)),
-                    meaning,
-                );
-            }
-            Term::Curvature | Term::Refraction | Term::Collimation => {
-                let shown = show.small(
-                    error.bias,
-                    if error.half() > 0.0 { error.half().min(error.bias.abs().max(1e-4)) } else { error.bias },
-                );
-                answer.result(
-                    promise,
-                    Some(error.bias),
-                    shown,
-                    Some(site::doubt_words(error, show)),
-                    words(error.bias),
-                );
-            }
+        if matches!(term, Term::Reading | Term::Distance) {
+            answer.result(promise, Some(error.half()), show.own(error.half()), None, meaning);
+        } else {
+            let (bias, doubt) = site::with_doubt(error, show);
+            answer.result(promise, Some(error.bias), bias, Some(doubt), meaning);
         }
     }
     site::k_result(&K_USED, &case.air, show, answer);
@@ -145,8 +121,8 @@ fn terms(limits: &[Limit], show: Show) -> Table {
 }
 
 fn contributions(parts: &[Part; 5], error: Estimate, show: Show) -> Table {
-    let unit = show.small_unit(error.worst()).symbol;
-    let cell = |si: f64, grain: f64| show.small(si, grain.max(error.half() / 100.0)).text;
+    let unit = show.small_unit(error.worst());
+    let cell = |si: f64, grain: f64| show.small_in(&unit, si, grain.max(error.half() / 100.0)).text;
     let row = |name: &str, e: &Estimate| {
         let grain = if e.half() > 0.0 { e.half() } else { e.bias.abs() };
         vec![name.to_owned(), cell(e.bias, grain), cell(e.below, grain), cell(e.above, grain)]
@@ -155,9 +131,9 @@ fn contributions(parts: &[Part; 5], error: Estimate, show: Show) -> Table {
     rows.push(row("Together", &error));
     let columns = vec![
         "Term".to_owned(),
-        format!("Bias, {unit}"),
-        format!("Doubt below, {unit}"),
-        format!("Doubt above, {unit}"),
+        format!("Bias, {}", unit.symbol),
+        format!("Doubt below, {}", unit.symbol),
+        format!("Doubt above, {}", unit.symbol),
     ];
     Table { name: "parts", caption: "What each term puts into the reading".to_owned(), columns, rows }
 }
