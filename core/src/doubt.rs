@@ -1,6 +1,21 @@
 //! Bias and doubt, kept apart: how parts add up, and how a sum stands to a limit.
 
-use crate::question::State;
+use serde::Serialize;
+
+/// How a decision stands to its limit.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+#[serde(rename_all = "snake_case")]
+pub enum State {
+    /// Bias and doubt together are inside the limit.
+    Within,
+    /// The limit lies inside the doubt.
+    Doubtful,
+    /// Outside the limit, whatever the doubt hides.
+    Beyond,
+    /// Not enough is known.
+    Unknown,
+}
 
 /// What is known of an error: its bias, and 95 % half-widths to either side. SI, any quantity.
 #[derive(Debug, Clone, Copy, PartialEq)]

@@ -2,7 +2,7 @@
 //!
 //! The rows are made by `tests/tables/make_rows.py`, which says what its columns are. An error is counted in ulps of the
 //! reference, times the conditioning of the row where no arithmetic in f64 can do better (the row says so).
-#![allow(clippy::unwrap_used, reason = "a test may panic")]
+#![allow(clippy::unwrap_used, clippy::panic, clippy::indexing_slicing, reason = "a test may panic")]
 
 use farstaff::air::guide::{KRange, Sky, k};
 use farstaff::quantity::unit::{Quantity, Unit};
@@ -14,23 +14,25 @@ use std::collections::BTreeMap;
 /// What is promised, in ulps. A promise that is broken fails, and so does one that is looser than what is measured.
 const PROMISES: &[(&str, f64)] = &[
     ("curvature", 4.0),
-    ("combined", 4.0),
-    ("refraction", 4.0),
+    ("combined", 3.0),
+    ("refraction", 3.0),
+    // |1 − k|·s/R from 0.16 up: k beyond −4 or 6 over 200 km, beyond ±30 over 30 km. The plain closed form is a dozen
+    // roundings, those of the angle doubled by its square; less takes more than f64, for air that no such line has.
     ("combined_steep", 7.0),
     ("refraction_steep", 7.0),
     ("handbook_combined", 3.0),
-    ("reach", 3.0),
+    ("reach", 2.0),
     ("imbalance", 3.0),
-    ("ratio_to_si", 2.0),
-    ("ratio_from_si", 2.0),
+    ("ratio_to_si", 1.0),
+    ("ratio_from_si", 1.0),
     ("angle_to_si", 3.0),
     ("angle_from_si", 3.0),
     ("inverse_to_si", 1.0),
-    ("factor_to_si", 2.0),
-    ("factor_from_si", 2.0),
-    ("guide_value", 2.0),
-    ("guide_low", 2.0),
-    ("guide_high", 2.0),
+    ("factor_to_si", 1.0),
+    ("factor_from_si", 1.0),
+    ("guide_value", 4.0),
+    ("guide_low", 3.0),
+    ("guide_high", 4.0),
 ];
 
 const ROWS: &str = include_str!("rows/accuracy.tsv");

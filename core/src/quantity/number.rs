@@ -67,13 +67,19 @@ pub fn split(text: &str) -> (String, String) {
 /// One point or one comma is the decimal sign. Two kinds, or more than one of a kind, are never guessed at.
 pub fn number(text: &str) -> Result<Number, NotANumber> {
     if let Some((above, below)) = text.split_once(['/', ':']) {
-        let (above, below) = (number(above)?, number(below)?);
-        if below.value == 0.0 {
+        let (above, below) = (plain(above)?, plain(below)?);
+        let value = above.value / below.value;
+        if !value.is_finite() {
             return Err(NotANumber::OutOfReach);
         }
         let text = format!("{}/{}", above.text, below.text);
-        return Ok(Number { value: above.value / below.value, text, sexagesimal: false, also: None });
+        return Ok(Number { value, text, sexagesimal: false, also: None });
     }
+    plain(text)
+}
+
+/// A number that is no fraction.
+fn plain(text: &str) -> Result<Number, NotANumber> {
     let joined = join_groups(text.trim())?;
     let (points, commas) = (joined.matches('.').count(), joined.matches(',').count());
     if points + commas > 1 {
@@ -140,12 +146,12 @@ pub fn sexagesimal(text: &str) -> Option<Result<Number, NotANumber>> {
         return None;
     }
     let negative = plain.starts_with('-');
-    let mut rest = plain.trim_start_matches(['-', '+']).to_owned();
+    let mut rest = plain.strip_prefix(['-', '+']).unwrap_or(&plain).to_owned();
     let (mut value, mut seen) = (0.0, false);
     for (sign, scale) in [('°', 1.0), ('′', 60.0), ('″', 3600.0)] {
         if let Some((part, after)) = rest.split_once(sign) {
             match number(part) {
-                Ok(n) if n.value >= 0.0 && !n.text.contains('/') && (!seen || n.value < 60.0) => {
+                Ok(n) if n.value >= 0.0 && !n.text.contains(['/', '-']) && (!seen || n.value < 60.0) => {
                     value += n.value / scale
                 }
                 Err(e @ NotANumber::Separators(_)) => return Some(Err(e)),

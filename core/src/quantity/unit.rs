@@ -240,7 +240,7 @@ impl Quantity {
     /// The unit of this quantity that is written so, in any usual spelling. `m` is metre, or half of k, by the quantity.
     pub fn unit(self, text: &str) -> Option<Unit> {
         let text = text.trim().trim_end_matches('.');
-        let lower = text.to_lowercase();
+        let lower = text.to_ascii_lowercase();
         let lower = lower.strip_suffix(')').and_then(|t| t.strip_prefix('(')).unwrap_or(&lower);
         let mine = |u: &&Unit| self.info().units.iter().any(|i| i.symbol == u.symbol);
         let half = |u: &Unit| u.scale == HALF_K.scale && u.symbol == HALF_K.symbol;
@@ -248,7 +248,7 @@ impl Quantity {
         let all = || ALL.iter().filter(mine).filter(right);
         all()
             .find(|u| u.symbol == text)
-            .or_else(|| all().find(|u| u.symbol.to_lowercase() == lower || u.also.contains(&lower)))
+            .or_else(|| all().find(|u| u.symbol.eq_ignore_ascii_case(lower) || u.also.contains(&lower)))
             .copied()
     }
 }

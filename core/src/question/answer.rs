@@ -2,6 +2,7 @@
 
 use super::figure::Figure;
 use super::{Asked, Promise, Question};
+pub use crate::doubt::State;
 use crate::quantity::show::Shown;
 use serde::Serialize;
 
@@ -72,21 +73,6 @@ pub struct Verdict {
     pub sentence: String,
     /// How it stands to the limit.
     pub state: State,
-}
-
-/// How a decision stands to its limit.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
-#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
-#[serde(rename_all = "snake_case")]
-pub enum State {
-    /// Bias and doubt together are inside the limit.
-    Within,
-    /// The limit lies inside the doubt.
-    Doubtful,
-    /// Outside the limit, whatever the doubt hides.
-    Beyond,
-    /// Not enough is known.
-    Unknown,
 }
 
 /// A number that came out.

@@ -51,8 +51,8 @@ impl Asked {
         // The last one counts, as the last thing a person did.
         let typed = |name: &str| pairs.iter().rev().find(|p| p.0 == name).map_or("", |p| p.1.trim());
         let system = match choose(&site::UNITS, typed(site::UNITS.name)) {
-            Ok("ft") => System::Foot,
-            Ok("ftUS") => System::SurveyFoot,
+            Ok("foot") => System::Foot,
+            Ok("survey_foot") => System::SurveyFoot,
             _ => System::Metric,
         };
         let mut asked =
@@ -221,9 +221,7 @@ impl Asked {
 /// The option of a choice that was meant, by value or by label; else the labels there are.
 fn choose(field: &Field, text: &str) -> Result<&'static str, String> {
     let Kind::Choice { options, .. } = field.kind else { return Err(String::new()) };
-    let lower = text.to_lowercase();
-    let found =
-        options.iter().find(|o| o.value == text || o.value.to_lowercase() == lower || o.label.to_lowercase() == lower);
+    let found = options.iter().find(|o| o.value.eq_ignore_ascii_case(text) || o.label.eq_ignore_ascii_case(text));
     found.map(|o| o.value).ok_or_else(|| options.iter().map(|o| o.label).collect::<Vec<_>>().join(", "))
 }
 
@@ -237,7 +235,9 @@ fn the(label: &str) -> String {
 fn lower(label: &str) -> String {
     let mut letters = label.chars();
     match (letters.next(), label.chars().nth(1)) {
-        (Some(first), Some(second)) if second.is_lowercase() => first.to_lowercase().chain(letters).collect(),
+        (Some(first), Some(second)) if second.is_ascii_lowercase() => {
+            std::iter::once(first.to_ascii_lowercase()).chain(letters).collect()
+        }
         _ => label.to_owned(),
     }
 }

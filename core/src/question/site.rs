@@ -24,14 +24,14 @@ pub const UNITS: Field = Field::choice(
     "units",
     "Units",
     &[
-        Opt { value: "m", label: "metres and millimetres" },
-        Opt { value: "ft", label: "international feet" },
-        Opt { value: "ftUS", label: "US survey feet" },
+        Opt { value: "metric", label: "metres and millimetres" },
+        Opt { value: "foot", label: "international feet" },
+        Opt { value: "survey_foot", label: "US survey feet" },
     ],
     "a number may always bring its own unit",
 )
 .help("What a number without a unit is in, and what the answer is shown in.")
-.default("m")
+.default("metric")
 .shared()
 .under(RULE);
 

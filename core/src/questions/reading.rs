@@ -190,7 +190,7 @@ fn verdict(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mu
             let corrected = show.height(corrected);
             verdict.sentence = format!(
                 "The correction is smaller than its doubt: {} {size}, which makes it {corrected}, and it is hardly better.",
-                way.to_lowercase()
+                way.to_ascii_lowercase()
             );
         }
         "raw" => {

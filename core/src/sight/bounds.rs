@@ -23,16 +23,26 @@ impl Stretch {
 /// Steps of the search between its edges, evenly spaced in the logarithm: about 7 % each over 0.1 m to 200 km.
 const STEPS: u32 = 200;
 
-/// The stretches of `low..=high` in which `excess` ≤ 0, ends found to the last bit.
-///
-/// `at` are distances that have to be looked at besides the steps: where a narrow stretch may lie. A stretch narrower
-/// than a step that holds none of them may be missed; a bump narrower than a step may be passed over.
-pub fn stretches(low: f64, high: f64, at: &[f64], excess: impl Fn(f64) -> f64) -> Vec<Stretch> {
+/// The distances to look at between `low` and `high`, in order: the steps, and those of `at` that lie between.
+pub fn places(low: f64, high: f64, at: &[f64]) -> Vec<f64> {
     let ratio = libm::log(high / low) / f64::from(STEPS);
-    let mut places: Vec<f64> = (0..=STEPS).map(|i| low * libm::exp(ratio * f64::from(i))).collect();
+    let mut places: Vec<f64> = (0..STEPS).map(|i| low * libm::exp(ratio * f64::from(i))).collect();
     places.extend(at.iter().copied().filter(|d| *d > low && *d < high));
+    places.push(high);
     places.sort_by(f64::total_cmp);
+    places
+}
+
+/// The stretches of `low..=high` in which `excess` ≤ 0, ends found to the last bit; `at` as in [`places`].
+pub fn stretches(low: f64, high: f64, at: &[f64], excess: impl Fn(f64) -> f64) -> Vec<Stretch> {
     let within = |d: f64| excess(d) <= 0.0;
+    joined(places(low, high, at).into_iter().map(|d| (d, within(d))), within)
+}
+
+/// The stretches between [`places`] of which each is known to be `within` or not.
+///
+/// A stretch narrower than a step that holds no place may be missed; a bump narrower than a step may be passed over.
+pub fn joined(known: impl Iterator<Item = (f64, bool)>, within: impl Fn(f64) -> bool) -> Vec<Stretch> {
     let edge = |mut inside: f64, mut outside: f64| {
         loop {
             let middle = f64::midpoint(inside, outside);
@@ -48,23 +58,16 @@ pub fn stretches(low: f64, high: f64, at: &[f64], excess: impl Fn(f64) -> f64) -
     };
     let mut found: Vec<Stretch> = vec![];
     let mut before: Option<(f64, bool)> = None;
-    for d in places {
-        let ok = within(d);
+    for (d, ok) in known {
         match (before, ok) {
             (None, true) => found.push(Stretch { from: d, to: d, open_below: true, open_above: false }),
             (Some((last, false)), true) => {
                 let from = edge(d, last);
                 found.push(Stretch { from, to: d, open_below: false, open_above: false });
             }
-            (Some((last, true)), false) => {
-                let to = edge(last, d);
+            (Some((last, true)), _) => {
                 if let Some(open) = found.last_mut() {
-                    open.to = to;
-                }
-            }
-            (Some((_, true)), true) => {
-                if let Some(open) = found.last_mut() {
-                    open.to = d;
+                    open.to = if ok { d } else { edge(last, d) };
                 }
             }
             _ => {}

@@ -60,7 +60,7 @@ pub fn written(number: &Number, unit: &Unit, bare: bool) -> String {
 
 /// Number and unit of a text; also `1 in 20`, and for k the forms `m = 0.07`, `k 0.13`.
 fn split(quantity: Quantity, text: &str) -> (String, String) {
-    let lower = text.to_lowercase();
+    let lower = text.to_ascii_lowercase();
     if quantity == Quantity::Gradient
         && let Some((one, rest)) = lower.split_once(" in ")
         && one.trim() == "1"

@@ -7,7 +7,7 @@ use crate::air::guide::Sky;
 use crate::doubt::Estimate;
 use crate::quantity::{Metres, Tilt};
 use crate::question::{Asked, site};
-use crate::sight::bounds::{Stretch, stretches};
+use crate::sight::bounds::{Stretch, joined, places, stretches};
 use crate::sight::budget::{Budget, Part, Term, total};
 
 /// Edges of the search for limits, metres. Below the first no level stands; the second is the longest distance read.
@@ -22,6 +22,8 @@ pub struct Case {
     pub allowed: f64,
     pub tolerance: f64,
     pub share: f64,
+    /// Every term at every place of the search: worked out once, asked for each limit.
+    scan: Vec<(f64, [Part; 5])>,
 }
 
 /// What counts against the allowance.
@@ -49,7 +51,12 @@ impl Case {
         };
         let (tolerance, share) = (asked.must(&TOLERANCE), asked.must(&SHARE));
         let distance = asked.must(&site::DISTANCE);
-        Case { budget, air, distance, other: asked.number(&OTHER), allowed: share * tolerance, tolerance, share }
+        let other = asked.number(&OTHER);
+        let allowed = share * tolerance;
+        let mut case = Case { budget, air, distance, other, allowed, tolerance, share, scan: vec![] };
+        let places = places(SEARCH.0, SEARCH.1, &[distance, other.unwrap_or(distance)]);
+        case.scan = places.into_iter().map(|d| (d, case.parts(d))).collect();
+        case
     }
     /// Every term at distance `d`, with the other sight as entered.
     pub fn parts(&self, d: f64) -> [Part; 5] {
@@ -69,16 +76,15 @@ impl Case {
     }
     /// The distances at which what counts stays within the allowance.
     pub fn bounds(&self, count: Count) -> Vec<Stretch> {
-        let at = [self.distance, self.other.unwrap_or(self.distance)];
-        stretches(SEARCH.0, SEARCH.1, &at, |d| {
-            let parts = self.parts(d);
+        let within = |parts: &[Part; 5]| {
             let worst = match count {
-                Count::All => total(&parts).worst(),
-                Count::DoubtOnly => total(&parts).corrected().worst(),
+                Count::All => total(parts).worst(),
+                Count::DoubtOnly => total(parts).corrected().worst(),
                 Count::One(term) => parts.iter().filter(|p| p.term == term).map(|p| p.error.worst()).sum(),
             };
-            worst - self.allowed
-        })
+            worst <= self.allowed
+        };
+        joined(self.scan.iter().map(|(d, parts)| (*d, within(parts))), |d| within(&self.parts(d)))
     }
     /// The stretch that says how far this sight may run: the one that holds the other sight, else the first.
     pub fn reach(&self, count: Count) -> Option<Stretch> {

@@ -1,0 +1,356 @@
+// Start, addresses, and the entry of the question in view. What is asked and answered comes from the core alone.
+import init, { ask, catalogue } from "./core.js";
+import { showAnswer, showStanding, spoken } from "./answer.js";
+import { byId, copy, download, fill, say, within } from "./dom.js";
+import { buildForm, unitName, usualUnit } from "./form.js";
+import { hint, startHint } from "./install.js";
+import { LINK_AT_MOST, readLink } from "./link.js";
+import { startOffline } from "./offline.js";
+import { startSettings } from "./settings.js";
+import { asideText, asides, dropAsides, keepAside, openStore, record, recordsOf, save, saved } from "./store.js";
+
+/** @typedef {import("./core.js").Question} Question */
+/** @typedef {import("./core.js").Answer} Answer */
+/** @typedef {import("./core.js").Catalogue} Catalogue */
+/** @typedef {Record<string, string>} Entry */
+
+const STEPS_KEPT = 50;
+const SETTLED_MS = 1000; // then an answer is read out and the address follows
+
+/** @type {Catalogue} */
+let all;
+/** @type {Question | undefined} */
+let question;
+/** @type {ReturnType<typeof buildForm> | undefined} */
+let form;
+/** @type {Answer} */
+let answer;
+/** @type {Entry} */
+let entry = {};
+let step = ""; // changes of one step are undone together
+let tried = false; // everything required was there once: now everything wrong is said
+/** @type {Set<string>} */
+const visited = new Set();
+/** @type {Entry | undefined} own entry, while one that came by link is looked at */
+let earlier;
+let pressing = false;
+let settling = 0;
+
+const site = () => record("site");
+const own = () => record(`question-${question?.id}`);
+/** @param {Question} of @param {boolean} shared */
+const namesOf = (of, shared) => of.fields.filter((field) => field.shared === shared)
+  .flatMap((field) => [field.name, unitName(field.name)]);
+/** @param {Entry} from @param {string[]} names @returns {Entry} */
+const pick = (from, names) => Object.fromEntries(names.flatMap((name) => {
+  const text = from[name];
+  return text === undefined ? [] : [[name, text]];
+}));
+/** @param {Question} of @returns {Entry} */
+const keptEntry = (of) =>
+  ({ ...pick(site().entry, namesOf(of, true)), ...pick(record(`question-${of.id}`).entry, namesOf(of, false)) });
+
+function units() {
+  const field = all.questions.flatMap((each) => each.fields).find((each) => each.name === all.units_field);
+  const inView = question?.fields.some((each) => each.name === all.units_field);
+  return (inView ? entry : site().entry)[all.units_field] || field?.default || "metric";
+}
+
+/** Puts the entry in view into its records and on disk. */
+function keep() {
+  if (!question) return;
+  const [shared, mine] = [namesOf(question, true), namesOf(question, false)];
+  for (const [kept, names] of /** @type {const} */ ([[site(), shared], [own(), mine]])) {
+    for (const name of names) delete kept.entry[name];
+    Object.assign(kept.entry, pick(entry, names));
+    save(kept);
+  }
+}
+
+/** A bare number keeps the unit it was typed in when the choice of units changes. @param {string} old */
+function pinUnits(old) {
+  const fields = all.questions.flatMap((each) => each.fields);
+  for (const texts of [entry, ...recordsOf("").map((kept) => kept.entry)]) {
+    for (const { name, kind } of fields) {
+      const info = kind.type === "number" && all.quantities.find((each) => each.name === kind.quantity);
+      if (info && texts[name] && !texts[unitName(name)]) texts[unitName(name)] = usualUnit(info, old);
+    }
+  }
+  for (const kept of recordsOf("question-")) save(kept);
+}
+
+/** @param {Entry} patch @param {string} [of] */
+function change(patch, of = "") {
+  if (!question) return;
+  if (step !== of || of === "") stack(own().undo, earlier ?? entry);
+  step = of;
+  earlier = undefined;
+  own().redo.length = 0;
+  if (patch[all.units_field] !== undefined) pinUnits(units());
+  for (const [name, text] of Object.entries(patch)) {
+    if (text === "") delete entry[name];
+    else entry[name] = text;
+  }
+  keep();
+  if (of === "" || patch[all.units_field] !== undefined) form?.write(entry);
+  refresh();
+}
+
+/** Adds a state to come back to. @param {Entry[]} list @param {Entry} state */
+function stack(list, state) {
+  list.push({ ...state });
+  list.splice(0, list.length - STEPS_KEPT);
+}
+
+/** @param {"undo" | "redo"} from @param {"undo" | "redo"} to */
+function travel(from, to) {
+  const state = own()[from].pop();
+  if (!state) return;
+  stack(own()[to], entry);
+  entry = state;
+  keep();
+  show(state);
+}
+
+/** Shows an entry in the form. @param {Entry} state */
+function show(state) {
+  entry = { ...state };
+  step = "";
+  for (const name of Object.keys(entry)) visited.add(name);
+  form?.write(entry);
+  refresh();
+}
+
+/** Asks, and shows what comes back. */
+function refresh() {
+  if (!question) return;
+  answer = ask(question.id, entry);
+  tried ||= question.fields.every((field) => !field.required || entry[field.name]);
+  const problems = answer.problems.filter((problem) => tried || visited.has(problem.field));
+  const typing = document.activeElement?.getAttribute("name") ?? ""; // nothing is wrong yet with what is being typed
+  const shown = problems.filter((problem) => problem.field !== typing || visited.has(typing));
+  form?.tell(answer.read, shown);
+  showAnswer(question, entry, answer, shown, { fix, focus: (name) => form?.focus(name) });
+  for (const list of /** @type {const} */ (["undo", "redo"])) {
+    /** @type {HTMLButtonElement} */ (byId(list)).disabled = own()[list].length === 0;
+  }
+  clearTimeout(settling);
+  settling = setTimeout(settle, SETTLED_MS);
+}
+
+/** Reads the answer out once, and makes the address hold the entry. */
+function settle() {
+  if (!question) return;
+  const words = spoken(answer);
+  if (byId("said").textContent !== words) byId("said").textContent = words;
+  if (earlier) return; // the address still is the link that was followed
+  history.replaceState({ own: true }, "", `#${question.id}?${answer.entry}`);
+  if (answer.verdict.state !== "unknown") hint();
+}
+
+/** @param {import("./core.js").Fix} given */
+function fix({ field, text, unit }) {
+  const numeric = question?.fields.some((each) => each.name === field && each.kind.type === "number");
+  change({ [field]: text, ...(numeric ? { [unitName(field)]: unit } : {}) });
+  form?.focus(field);
+}
+
+/** A unit typed behind the number moves into the list beside the box. @param {string} name */
+function adopt(name) {
+  const read = answer.read.find((each) => each.field === name);
+  const typed = entry[name]?.trim();
+  if (!typed || !/\p{L}|[%°′″‰]/u.test(typed)) return; // no unit was typed
+  if (!read?.unit || read.text === typed || answer.problems.some((each) => each.field === name)) return;
+  entry[name] = read.text;
+  entry[unitName(name)] = read.unit;
+  form?.write(entry);
+  if (!earlier) keep();
+}
+
+/** A field is done with. Showing what is wrong moves the page, so not under a finger. @param {string} name */
+function left(name) {
+  if (pressing) {
+    document.addEventListener("click", () => left(name), { once: true });
+    return;
+  }
+  visited.add(name);
+  step = "";
+  adopt(name);
+  refresh();
+}
+
+/** Opens what the address says. */
+function route() {
+  const [id = "", ...rest] = location.hash.slice(1).split("?");
+  const link = rest.join("?");
+  question = all.questions.find((each) => each.id === id);
+  byId("home").hidden = Boolean(question);
+  byId("question").hidden = !question;
+  document.title = question ? `${question.phrase} Farstaff` : "Farstaff";
+  clearTimeout(settling);
+  earlier = undefined;
+  if (!question) {
+    form = undefined;
+    if (location.hash.length > 1) {
+      keepAside("an address that names no question of this page", location.hash.slice(0, LINK_AT_MOST));
+      showAsides();
+      say("This address names no question of this page. It was kept aside.");
+      history.replaceState(null, "", "#");
+    }
+    return;
+  }
+  visited.clear();
+  tried = false;
+  showStanding(question);
+  entry = keptEntry(question);
+  const around = { quantities: all.quantities, units, change, left, fix, end };
+  form = buildForm(question.fields, around, own().open, () => save(own()));
+  show(entry);
+  if (link && !history.state?.own) follow(question, link);
+}
+
+/** Shows the entry that a link brings, beside the person's own. @param {Question} of @param {string} link */
+function follow(of, link) {
+  const { known, unknown } = readLink(of, all.quantities, link);
+  if (unknown) {
+    keepAside("part of a link that this page does not know", unknown);
+    showAsides();
+    say("Part of this link could not be read. It was kept aside.");
+  }
+  const mine = entry;
+  const differs = ask(of.id, known).entry !== ask(of.id, mine).entry;
+  if (!differs || Object.keys(known).length === 0) return;
+  earlier = mine;
+  show(known);
+  for (const field of of.fields) adopt(field.name);
+  if (Object.values(mine).every((text) => text === "")) {
+    earlier = undefined;
+    keep();
+    return;
+  }
+  say("This entry came with the link. Yours is still kept.", {
+    "Keep my earlier entry": () => { earlier = undefined; show(mine); },
+    "Use this one": () => change({}),
+  });
+}
+
+/** Enter in the last field: what is wrong is said, and the decision is read. */
+function end() {
+  tried = true;
+  refresh();
+  byId(byId("problems").hidden ? "verdict" : "problems").focus();
+}
+
+function again() {
+  if (!question) return;
+  const names = namesOf(question, false);
+  change(Object.fromEntries(names.map((name) => [name, ""])));
+  visited.clear();
+  tried = false;
+  refresh();
+  say("The fields of this question are empty again.", { "Undo": () => travel("undo", "redo") });
+}
+
+function showAsides() {
+  byId("aside").hidden = asides.length === 0;
+  /** @type {HTMLTextAreaElement} */ (byId("aside-text")).value = asideText();
+}
+
+/** Everything on the page that can be pressed and stands there from the start. */
+function connect() {
+  /** @param {string} id @param {() => void} act */
+  const on = (id, act) => byId(id).addEventListener("click", act);
+  on("undo", () => travel("undo", "redo"));
+  on("redo", () => travel("redo", "undo"));
+  on("again", again);
+  on("print", () => window.print());
+  on("aside-save", () => download("farstaff-kept-aside.txt", asideText()));
+  on("aside-drop", () => dropAsides().then(showAsides));
+  byId("skip").addEventListener("click", (event) => { event.preventDefault(); byId("main").focus(); });
+  byId("form").addEventListener("submit", (event) => event.preventDefault());
+  for (const event of ["pointerdown", "pointerup", "pointercancel"]) {
+    document.addEventListener(event, () => { pressing = event === "pointerdown"; }, true);
+  }
+  addEventListener("hashchange", route);
+  addEventListener("beforeprint", () => {
+    byId("printed").textContent = new Date().toLocaleString(undefined, { dateStyle: "long", timeStyle: "long" });
+    for (const details of byId("question").querySelectorAll("details")) details.open = true;
+  });
+}
+
+/** The list of questions. A tap goes on at once, so that the phone lets the keyboard come up. */
+function showHome() {
+  byId("questions").replaceChildren(...all.questions.map(({ id, phrase, about }) => {
+    const item = copy("t-question");
+    const link = /** @type {HTMLAnchorElement} */ (within(item, "a"));
+    link.href = `#${id}`;
+    fill(item, "phrase", phrase);
+    fill(item, "about", about);
+    link.addEventListener("click", (event) => {
+      if (event.ctrlKey || event.metaKey || event.shiftKey) return;
+      event.preventDefault();
+      history.pushState(null, "", link.href);
+      route();
+      scrollTo(0, 0);
+      const first = question?.fields[0];
+      if (first) form?.focus(first.name);
+    });
+    return item;
+  }));
+  for (const link of document.querySelectorAll("[data-home], #home-link")) {
+    link.addEventListener("click", (event) => {
+      event.preventDefault();
+      history.pushState(null, "", "#");
+      route();
+      scrollTo(0, 0);
+      byId("main").focus();
+    });
+  }
+}
+
+/** The core's bytes: in the page itself where it is a single file. */
+async function loadCore() {
+  const inside = document.getElementById("wasm")?.textContent;
+  if (inside) return init({ module_or_path: Uint8Array.from(atob(inside.trim()), (c) => c.charCodeAt(0)) });
+  const url = "farstaff.wasm";
+  try {
+    const module = await WebAssembly.compileStreaming(fetch(url));
+    return await init({ module_or_path: module });
+  } catch { // a host that names the type wrongly
+    return init({ module_or_path: await (await fetch(url)).arrayBuffer() });
+  }
+}
+
+/** @param {unknown} error */
+function trouble(error) {
+  const name = error instanceof DOMException ? error.name : "";
+  if (name === "QuotaExceededError") say("This device is full: what you type stays but is not saved. Free some space.");
+  else if (name === "VersionError") say("A newer version of this page has been used here. Reload the page.");
+  else say("What you type stays here but cannot be saved on this device. Print it or copy the address to keep it.");
+}
+
+async function start() {
+  startSettings();
+  startHint();
+  connect();
+  const store = openStore({
+    trouble,
+    damaged: () => say("A saved entry was damaged. It was kept aside."),
+    changed: () => { // by another tab; not under the hands of someone who types
+      if (question && !byId("form").contains(document.activeElement)) show(keptEntry(question));
+    },
+  });
+  await loadCore();
+  all = catalogue();
+  await store;
+  showAsides();
+  showHome();
+  route();
+  document.documentElement.dataset.ready = "1";
+  await startOffline(saved);
+}
+
+start().catch((error) => {
+  say("The calculator did not start. Reload the page, with signal if you can.");
+  throw error;
+});

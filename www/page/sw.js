@@ -1,0 +1,54 @@
+const VERSION = "@@VERSION@@";
+const FILES = [["@@FILES@@", ""]];
+// The offline copy: one cache per build, filled whole or not at all, never touched after that. The build writes the two
+// lines above: FILES holds each file's path ("" is the page itself) with the digest its bytes must have.
+const sw = /** @type {ServiceWorkerGlobalScope} */ (/** @type {unknown} */ (self));
+const OURS = "farstaff-";
+const NAME = OURS + VERSION;
+const PAGE = new URL("./", sw.registration.scope).href;
+
+async function fill() {
+  await caches.delete(NAME); // leftovers of an install that was killed
+  const cache = await caches.open(NAME);
+  try {
+    // A stale or half-deployed file fails its digest, the whole install fails, and the old version stays in charge.
+    await cache.addAll(FILES.map(([path, integrity]) => new Request(new URL(path ?? "", PAGE), {
+      cache: "reload", credentials: "omit", redirect: "error", integrity: integrity ?? "",
+    })));
+  } catch (error) {
+    await caches.delete(NAME);
+    throw error;
+  }
+}
+
+async function takeOver() {
+  for (const key of await caches.keys()) if (key.startsWith(OURS) && key !== NAME) await caches.delete(key);
+  await sw.clients.claim(); // the first visit becomes controlled without a reload
+}
+
+/** @param {Request} request */
+async function serve(request) {
+  const cache = await caches.open(NAME);
+  const page = request.mode === "navigate";
+  // Parts never come from the network: that would mix versions.
+  return (await cache.match(page ? PAGE : request, { ignoreSearch: !page, ignoreVary: true }))
+    ?? (page ? fetch(request) : Response.error());
+}
+
+/** @param {MessagePort | undefined} port */
+async function count(port) {
+  const kept = await (await caches.open(NAME)).keys();
+  port?.postMessage({ version: VERSION, complete: kept.length === FILES.length });
+}
+
+sw.addEventListener("install", (event) => event.waitUntil(fill()));
+sw.addEventListener("activate", (event) => event.waitUntil(takeOver()));
+sw.addEventListener("fetch", (event) => {
+  const { request } = event;
+  if (request.method !== "GET" || new URL(request.url).origin !== sw.location.origin) return;
+  event.respondWith(serve(request));
+});
+sw.addEventListener("message", (event) => {
+  if (event.data === "skip") event.waitUntil(sw.skipWaiting());
+  if (event.data === "ready?") event.waitUntil(count(event.ports[0]));
+});

@@ -1,0 +1,78 @@
+//! What the site weighs, and what it may weigh. 1 kB is 1000 bytes.
+
+use crate::site::{PAGE, SINGLE, STYLE, Site, WASM};
+use flate2::{Compression, write::GzEncoder};
+use std::fmt::Write as _;
+use std::io::Write as _;
+
+/// Bytes of some files: as they are, and as a host sends them.
+#[derive(Debug, Clone, Copy, Default)]
+pub struct Size {
+    pub raw: usize,
+    pub gzip: usize,
+    pub brotli: usize,
+}
+
+/// A group of files and the most it may weigh in brotli.
+pub struct Budget {
+    pub name: &'static str,
+    pub most: usize,
+    belongs: fn(&str) -> bool,
+}
+
+/// The figures the page is held to. The single file is no part of a visit.
+pub const BUDGETS: [Budget; 4] = [
+    Budget { name: "page and style", most: 13_000, belongs: |name| name == PAGE || name == STYLE },
+    Budget { name: "JavaScript", most: 25_000, belongs: |name| name.ends_with(".js") },
+    Budget { name: "wasm", most: 100_000, belongs: |name| name == WASM },
+    Budget { name: "first visit", most: 150_000, belongs: |name| name != SINGLE },
+];
+
+/// Sizes of each file.
+pub fn sizes(site: &Site) -> Vec<(&str, Size)> {
+    site.0.iter().map(|(name, bytes)| (name.as_str(), size(bytes))).collect()
+}
+
+/// Size of a group, each file compressed by itself as a host does.
+pub fn total(budget: &Budget, sizes: &[(&str, Size)]) -> Size {
+    sizes.iter().filter(|(name, _)| (budget.belongs)(name)).fold(Size::default(), |sum, (_, size)| Size {
+        raw: sum.raw + size.raw,
+        gzip: sum.gzip + size.gzip,
+        brotli: sum.brotli + size.brotli,
+    })
+}
+
+/// A table of figures and budgets, and whether any is over.
+pub fn report(site: &Site) -> (String, bool) {
+    let sizes = sizes(site);
+    let mut text = String::new();
+    let mut row = |cells: [&str; 5]| {
+        let [name, raw, gzip, brotli, most] = cells;
+        // OK because writing to a String cannot fail.
+        let _ = writeln!(text, "{name:<22}{raw:>9}{gzip:>9}{brotli:>9}  {most}");
+    };
+    row(["", "raw", "gzip", "brotli", "budget"]);
+    for (name, size) in &sizes {
+        row([name, &size.raw.to_string(), &size.gzip.to_string(), &size.brotli.to_string(), ""]);
+    }
+    let mut over = false;
+    for budget in &BUDGETS {
+        let size = total(budget, &sizes);
+        let word = if size.brotli > budget.most { "OVER" } else { "ok" };
+        over |= size.brotli > budget.most;
+        let most = format!("{} {word}", budget.most);
+        row([budget.name, &size.raw.to_string(), &size.gzip.to_string(), &size.brotli.to_string(), &most]);
+    }
+    (text, over)
+}
+
+fn size(bytes: &[u8]) -> Size {
+    const MEMORY: &str = "writing to memory does not fail";
+    let mut gzip = GzEncoder::new(Vec::new(), Compression::best());
+    gzip.write_all(bytes).expect(MEMORY);
+    let gzip = gzip.finish().expect(MEMORY).len();
+    let mut brotli = Vec::new();
+    let params = brotli::enc::BrotliEncoderParams { quality: 11, lgwin: 22, ..Default::default() };
+    brotli::BrotliCompress(&mut &bytes[..], &mut brotli, &params).expect(MEMORY);
+    Size { raw: bytes.len(), gzip, brotli: brotli.len() }
+}
