@@ -62,7 +62,7 @@ const STOP: &str = "const at = document.activeElement;
     const { outlineStyle, outlineWidth } = getComputedStyle(shown);
     at.dataset.stop = '1';
     return { what: `${at.tagName} ${at.id || at.name || at.textContent.trim()}`, again: at.dataset.seen === '1',
-        marked: outlineStyle !== 'none' && parseFloat(outlineWidth) > 0,
+        debug: [outlineStyle, outlineWidth, at.matches(':focus'), at.matches(':focus-visible'), document.hasFocus()], marked: outlineStyle !== 'none' && parseFloat(outlineWidth) > 0,
         free: Boolean(over) && (shown.contains(over) || over.contains(shown)),
         seen: (at.dataset.seen = '1') };";
 
@@ -87,7 +87,7 @@ fn stops(stage: &Stage) -> Result<()> {
                 break;
             }
             count += 1;
-            check(stop["marked"] == json!(true), || format!("not seen at {place:?}: {}", stop["what"]))?;
+            check(stop["marked"] == json!(true), || format!("not seen at {place:?}: {}", stop))?;
             check(stop["free"] == json!(true), || format!("covered at {place:?}: {}", stop["what"]))?;
             check(count < 300, || "it goes on for ever".to_owned())?;
         }

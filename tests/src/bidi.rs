@@ -11,11 +11,13 @@ use std::rc::Rc;
 use std::time::{Duration, Instant};
 
 /// No errand of its own, and no doubt about time.
-const PREFERENCES: [(&str, &str); 7] = [
+const PREFERENCES: [(&str, &str); 8] = [
     ("app.update.enabled", "false"),
     ("browser.shell.checkDefaultBrowser", "false"),
     ("browser.startup.page", "0"),
     ("datareporting.policy.dataSubmissionEnabled", "false"),
+    // A page in a window that nobody looks at has the focus all the same.
+    ("focusmanager.testmode", "true"),
     ("network.captive-portal-service.enabled", "false"),
     ("network.connectivity-service.enabled", "false"),
     ("privacy.reduceTimerPrecision", "false"),

@@ -164,19 +164,20 @@ impl Browser {
         found.as_str().map(str::to_owned).ok_or(format!("no element {css}"))
     }
 
-    /// Taps the middle of an element, as a finger does where the engine's driver has fingers.
+    /// Taps the middle of an element, as a finger does where the engine's driver has fingers. Like a finger it first
+    /// moves the page until the element lies free: a driver alone leaves it under the bar at the top.
     pub fn tap(&self, css: &str) -> Result<()> {
+        let centre =
+            format!("document.querySelector({})?.scrollIntoView({{ block: 'center' }}); return 0;", json!(css));
+        self.js(&centre)?;
         match self {
             Chromium(session) | WebKit(session) => {
                 let id = session.element(css)?;
                 session.post(&format!("element/{id}/click"), json!({}))
             }
             Browser::Firefox(firefox) => {
-                let origin = firefox.element(css)?;
-                let centre = "document.querySelector({}).scrollIntoView({ block: 'center' })";
-                firefox.js(&centre.replacen("{}", &json!(css).to_string(), 1))?;
                 let moves = json!([
-                    { "type": "pointerMove", "x": 0, "y": 0, "origin": origin },
+                    { "type": "pointerMove", "x": 0, "y": 0, "origin": firefox.element(css)? },
                     { "type": "pointerDown", "button": 0 },
                     { "type": "pointerUp", "button": 0 },
                 ]);

@@ -49,7 +49,9 @@ impl Session {
         let port = free_port()?;
         let display = format!(":{port}");
         let mut screen = Command::new(find(&["Xvfb"])?);
-        screen.args([&display, "-screen", "0", "1280x1024x24", "-nolisten", "tcp"]);
+        // Without a window manager the window under the pointer has the focus. The pointer stands in the middle of the
+        // screen, and that is within the window at its narrowest.
+        screen.args([&display, "-screen", "0", "880x1000x24", "-nolisten", "tcp"]);
         let screen = Child::start(&screen, &log.with_extension("display.log"))?;
         let mut driver = Command::new(find(&["WebKitWebDriver"])?);
         driver.arg(format!("--port={port}")).envs([
@@ -162,5 +164,9 @@ fn read(path: &str, response: Result<ureq::http::Response<ureq::Body>, ureq::Err
     let mut response = response.map_err(|error| format!("{path}: {error}"))?;
     let body: Value = response.body_mut().with_config().limit(64 << 20).read_json().map_err(words)?;
     let value = &body["value"];
-    if response.status().is_success() { Ok(value.clone()) } else { Err(format!("{path}: {}", value["message"])) }
+    if response.status().is_success() {
+        Ok(value.clone())
+    } else {
+        Err(format!("{path}: {} {}", value["error"], value["message"]))
+    }
 }

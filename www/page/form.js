@@ -37,8 +37,7 @@ const MAKERS = { number: numberBox, choice: choiceBox };
 export const unitName = (name) => `${name}.unit`;
 
 /** The unit a bare number has. @param {QuantityInfo} info @param {string} units */
-export const usualUnit = (info, units) =>
-  /** @type {Entry} */ ({ m: info.metric, ft: info.foot, ftUS: info.survey_foot })[units] ?? info.metric;
+export const usualUnit = (info, units) => /** @type {any} */ (info)[units] ?? info.metric;
 
 /**
  * Label, help, error and echo, and what ties them to the control.

@@ -5,6 +5,7 @@ mod decide;
 mod figure;
 mod limit;
 mod sheet;
+mod working;
 
 use crate::limits;
 use crate::quantity::unit::Quantity;

@@ -1,10 +1,10 @@
-//! Results, tables and the working: what the decision rests on, to be checked with a pencil.
+//! Results and tables: what the decision rests on.
 
 use super::case::{Case, Count, SEARCH};
 use super::limit::{End, Limit};
 use super::*;
 use crate::doubt::Estimate;
-use crate::quantity::show::{Round, Show, Shown, places};
+use crate::quantity::show::{Round, Show, Shown};
 use crate::question::answer::Table;
 use crate::sight::bounds::Stretch;
 use crate::sight::budget::{Part, Term};
@@ -19,7 +19,7 @@ pub fn fill(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer) {
     each(case, &parts, asked.number(&COLLIMATION).is_some(), show, answer);
     answer.tables.push(terms(limits, show));
     answer.tables.push(contributions(&parts, error, show));
-    working(case, &parts, error, show, answer);
+    answer.working = working::lines(case, &parts, error);
     notes(asked, case, answer);
 }
 
@@ -147,65 +147,6 @@ pub fn name(term: Term) -> &'static str {
         Term::Reading => READING_PART.label,
         Term::Distance => DISTANCE_PART.label,
     }
-}
-
-fn working(case: &Case, parts: &[Part; 5], error: Estimate, show: Show, answer: &mut Answer) {
-    let (d, r, k) = (case.distance, case.budget.radius.0, case.budget.k);
-    let mm = |si: f64| places(si * 1000.0, 3);
-    let m = |si: f64| places(si, if si < 1000.0 { 2 } else { 0 });
-    let lines = &mut answer.working;
-    lines.push(format!(
-        "D = {} m, R = {} m, k = {} (from {} to {}), {}",
-        m(d),
-        m(r),
-        show.k(k.value.0),
-        show.k(k.low.0),
-        show.k(k.high.0),
-        case.air.source
-    ));
-    let squares = match case.other {
-        Some(other) => {
-            lines.push(format!("D′ = {} m, the other sight; D² − D′² = {} m²", m(other), m(d * d - other * other)));
-            d * d - other * other
-        }
-        None => d * d,
-    };
-    let curve = squares / (2.0 * r);
-    let (what, length) = if case.other.is_some() { ("(D² − D′²)", "(D − D′)") } else { ("D²", "D") };
-    lines.push(format!("curvature = {what} / 2R = {} / {} = {} mm", m(squares), m(2.0 * r), mm(curve)));
-    lines.push(format!(
-        "refraction = −k · curvature = −({}) × {} = {} mm",
-        show.k(k.value.0),
-        mm(curve),
-        mm(-k.value.0 * curve)
-    ));
-    let alpha = case.budget.collimation.0;
-    let run = case.other.map_or(d, |other| d - other);
-    lines.push(format!(
-        "collimation = α · {length} = {} mm/m × {} m = {} mm",
-        places(alpha * 1000.0, 3),
-        m(run),
-        mm(alpha * run)
-    ));
-    lines.push(format!(
-        "bias = sum of the three = {} mm (exact forms: {} mm)",
-        mm((1.0 - k.value.0) * curve + alpha * run),
-        mm(error.bias)
-    ));
-    for (side, pick) in [("above", true), ("below", false)] {
-        let halves: Vec<String> =
-            parts.iter().map(|p| format!("{}²", mm(if pick { p.error.above } else { p.error.below }))).collect();
-        let whole = if pick { error.above } else { error.below };
-        lines.push(format!("doubt {side} = √({}) = {} mm", halves.join(" + "), mm(whole)));
-    }
-    let sign = if error.worst() <= case.allowed { "≤" } else { ">" };
-    lines.push(format!(
-        "farther end = {} mm {sign} {} % of {} mm = {} mm",
-        mm(error.worst()),
-        places(case.share * 100.0, 0),
-        mm(case.tolerance),
-        mm(case.allowed)
-    ));
 }
 
 fn notes(asked: &Asked, case: &Case, answer: &mut Answer) {
