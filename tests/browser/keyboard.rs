@@ -14,6 +14,14 @@ pub fn run(tally: &mut Tally, stage: &Stage) {
 fn decide(stage: &Stage) -> Result<()> {
     let browser = stage.browser;
     let _server = stage.open()?;
+    let f = "return [document.hasFocus(), screenX, screenY, outerWidth, outerHeight, innerWidth]";
+    eprintln!("focus {:?}", browser.js(f));
+    browser.js("window.focus(); return 0;")?;
+    eprintln!("focus {:?}", browser.js(f));
+    browser.tap("h1")?;
+    eprintln!("focus {:?}", browser.js(f));
+    std::thread::sleep(std::time::Duration::from_secs(2));
+    eprintln!("focus {:?}", browser.js(f));
     let at = |css: &str| -> Result<bool> {
         let here = browser.js(&format!("return document.activeElement.matches({})", json!(css)))?;
         Ok(here == json!(true))
@@ -56,7 +64,7 @@ fn decide(stage: &Stage) -> Result<()> {
 const STOP: &str = "const at = document.activeElement;
     if (at === document.body || at === document.documentElement) return null;
     const shown = at.closest('.choice') ?? at;
-    await new Promise(requestAnimationFrame);
+    for (const _ of [1, 2]) await new Promise(requestAnimationFrame);
     const box = shown.getBoundingClientRect();
     const over = document.elementFromPoint(box.left + box.width / 2, box.top + Math.min(box.height, innerHeight) / 2);
     const { outlineStyle, outlineWidth } = getComputedStyle(shown);

@@ -1,6 +1,6 @@
 //! Firefox by WebDriver BiDi, which it speaks itself: no driver to install.
 
-use crate::child::{Child, Scratch, find, free_port};
+use crate::child::{Child, Display, Scratch, find, free_port};
 use crate::socket::Socket;
 use crate::{Result, words};
 use serde_json::{Value, json};
@@ -11,13 +11,11 @@ use std::rc::Rc;
 use std::time::{Duration, Instant};
 
 /// No errand of its own, and no doubt about time.
-const PREFERENCES: [(&str, &str); 8] = [
+const PREFERENCES: [(&str, &str); 7] = [
     ("app.update.enabled", "false"),
     ("browser.shell.checkDefaultBrowser", "false"),
     ("browser.startup.page", "0"),
     ("datareporting.policy.dataSubmissionEnabled", "false"),
-    // A page in a window that nobody looks at has the focus all the same.
-    ("focusmanager.testmode", "true"),
     ("network.captive-portal-service.enabled", "false"),
     ("network.connectivity-service.enabled", "false"),
     ("privacy.reduceTimerPrecision", "false"),
@@ -30,6 +28,7 @@ pub struct Firefox {
     pub version: String,
     killed: bool,
     _browser: Child,
+    _display: Display,
     _profile: Rc<Scratch>,
 }
 
@@ -46,7 +45,10 @@ impl Firefox {
             PREFERENCES.iter().map(|(name, value)| format!("user_pref('{name}', {value});\n")).collect();
         std::fs::write(profile.0.join("user.js"), lines).map_err(words)?;
         let mut browser = Command::new(find(&["firefox-esr", "firefox"])?);
-        browser.args(["--headless", "--no-remote", "--profile"]).arg(&profile.0);
+        // Not headless: a page without a window gets no events of focus.
+        let display = Display::start(log)?;
+        browser.env("DISPLAY", &display.name).env("MOZ_ENABLE_WAYLAND", "0");
+        browser.args(["--no-remote", "--profile"]).arg(&profile.0);
         browser.arg(format!("--remote-debugging-port={port}")).arg("about:blank");
         let browser = Child::start(&browser, log)?;
         let start = Instant::now();
@@ -59,7 +61,8 @@ impl Firefox {
         };
         let link = RefCell::new(Link { socket, sent: 0 });
         let (tab, version) = Default::default();
-        let mut firefox = Firefox { link, tab, version, killed: false, _browser: browser, _profile: profile };
+        let mut firefox =
+            Firefox { link, tab, version, killed: false, _browser: browser, _display: display, _profile: profile };
         let session = firefox.send("session.new", json!({ "capabilities": { "alwaysMatch": {} } }))?;
         firefox.version = format!("firefox {}", session["capabilities"]["browserVersion"]).replace('"', "");
         let tree = firefox.send("browsingContext.getTree", json!({}))?;

@@ -8,6 +8,7 @@ use std::os::unix::process::CommandExt;
 use std::path::{Path, PathBuf};
 use std::process::{self, Command, Stdio};
 use std::sync::atomic::{AtomicU32, Ordering};
+use std::time::{Duration, Instant};
 
 /// The guard leads a process group in which the program runs, and reads from a pipe that only the test holds. The pipe
 /// closes when the test drops it, and also when the test is killed: then the guard kills the group.
@@ -34,6 +35,33 @@ impl Drop for Child {
     fn drop(&mut self) {
         drop(self.0.stdin.take());
         let _ = self.0.wait();
+    }
+}
+
+/// A screen in memory, for a browser that has no headless mode or lacks the focus in it.
+pub struct Display {
+    /// What goes into DISPLAY.
+    pub name: String,
+    _server: Child,
+}
+
+impl Display {
+    /// Starts it. Without a window manager the window under the pointer has the focus. The pointer stands in the middle of
+    /// the screen, and that is within a browser's window at its narrowest.
+    pub fn start(log: &Path) -> Result<Display> {
+        let name = format!(":{}", free_port()?);
+        let mut server = Command::new(find(&["Xvfb"])?);
+        server.args([&name, "-screen", "0", "880x1000x24", "-nolisten", "tcp"]);
+        let server = Child::start(&server, &log.with_extension("display.log"))?;
+        let socket = PathBuf::from(format!("/tmp/.X11-unix/X{}", &name[1..]));
+        let start = Instant::now();
+        while !socket.exists() {
+            if start.elapsed() > Duration::from_secs(20) {
+                return Err("Xvfb does not start".to_owned());
+            }
+            std::thread::sleep(Duration::from_millis(10));
+        }
+        Ok(Display { name, _server: server })
     }
 }
 

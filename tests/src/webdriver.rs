@@ -1,6 +1,6 @@
 //! A blocking WebDriver client, for Chromium and WebKit.
 
-use crate::child::{Child, Scratch, find, free_port, is_root};
+use crate::child::{Child, Display, Scratch, find, free_port, is_root};
 use crate::{Result, words};
 use serde_json::{Value, json};
 use std::path::Path;
@@ -15,7 +15,7 @@ pub struct Session {
     pub version: String,
     killed: bool,
     _driver: Child,
-    _display: Option<Child>,
+    _display: Option<Display>,
     _profile: Rc<Scratch>,
 }
 
@@ -47,15 +47,10 @@ impl Session {
     /// WebKit, which has no headless mode: it draws on a display in memory. Under a driver it keeps nothing on disk.
     pub fn webkit(log: &Path, profile: Rc<Scratch>) -> Result<Session> {
         let port = free_port()?;
-        let display = format!(":{port}");
-        let mut screen = Command::new(find(&["Xvfb"])?);
-        // Without a window manager the window under the pointer has the focus. The pointer stands in the middle of the
-        // screen, and that is within the window at its narrowest.
-        screen.args([&display, "-screen", "0", "880x1000x24", "-nolisten", "tcp"]);
-        let screen = Child::start(&screen, &log.with_extension("display.log"))?;
+        let display = Display::start(log)?;
         let mut driver = Command::new(find(&["WebKitWebDriver"])?);
         driver.arg(format!("--port={port}")).envs([
-            ("DISPLAY", display.as_str()),
+            ("DISPLAY", display.name.as_str()),
             ("GTK_A11Y", "none"),
             ("NO_AT_BRIDGE", "1"),
             ("LIBGL_ALWAYS_SOFTWARE", "1"),
@@ -67,10 +62,16 @@ impl Session {
         let browser = find(&[&format!("/usr/lib/{machine}-linux-gnu/webkit2gtk-4.1/MiniBrowser")])?;
         let options = json!({ "binary": browser, "args": ["--automation"] });
         let driver = Child::start(&driver, log)?;
-        Session::open(port, json!({ "webkitgtk:browserOptions": options }), driver, Some(screen), profile)
+        Session::open(port, json!({ "webkitgtk:browserOptions": options }), driver, Some(display), profile)
     }
 
-    fn open(port: u16, wanted: Value, driver: Child, display: Option<Child>, profile: Rc<Scratch>) -> Result<Session> {
+    fn open(
+        port: u16,
+        wanted: Value,
+        driver: Child,
+        display: Option<Display>,
+        profile: Rc<Scratch>,
+    ) -> Result<Session> {
         let config = ureq::Agent::config_builder().timeout_global(Some(Duration::from_secs(60)));
         let agent = config.http_status_as_error(false).build().new_agent();
         let root = format!("http://127.0.0.1:{port}");

@@ -86,9 +86,19 @@ impl Show {
         let vanishes = value != 0.0 && !places(value, places_of_grain).contains(|c: char| ('1'..='9').contains(&c));
         Shown { text: places(value, if vanishes { fitting(value, 1) } else { places_of_grain }), unit: unit.symbol }
     }
-    /// A small length to two significant digits of its own.
+    /// A small length to two significant digits of its own, on both sides of the point.
     pub fn own(self, si: f64) -> Shown {
-        self.small(si, si)
+        let unit = self.small_unit(si);
+        let value = in_unit(si, &unit);
+        if magnitude(value) >= 2 {
+            return Shown { text: significant(value, 2), unit: unit.symbol };
+        }
+        self.small_in(&unit, si, si)
+    }
+    /// A small length that was entered, or follows from what was: four significant digits, no zeros after them.
+    pub fn entered(self, si: f64) -> Shown {
+        let unit = self.small_unit(si);
+        Shown { text: significant(in_unit(si, &unit), 4), unit: unit.symbol }
     }
     /// A height, to a tenth of a millimetre or a thousandth of a foot.
     pub fn height(self, si: f64) -> Shown {

@@ -119,7 +119,7 @@ fn shortest_help(case: &Case, far: Option<Stretch>, given: bool, rule: &str, sho
         verdict.sentence = format!(
             "Doubt grows from {} at the shortest sight on, and {} is allowed. Read finer, or allow more.",
             show.own(case.error(SEARCH.0).half()),
-            show.own(case.allowed)
+            show.entered(case.allowed)
         );
     }
 }
@@ -128,7 +128,7 @@ fn shortest_help(case: &Case, far: Option<Stretch>, given: bool, rule: &str, sho
 fn taken(case: &Case, limits: &[Limit], rule: &str, show: Show) -> (String, String) {
     let error = case.error(case.distance);
     let mut words =
-        format!("Bias and doubt come to {} of the {} allowed.", show.own(error.worst()), show.own(case.allowed));
+        format!("Bias and doubt come to {} of the {} allowed.", show.own(error.worst()), show.entered(case.allowed));
     let stretch = case.bounds(Count::All).into_iter().find(|s| s.holds(case.distance));
     let optical = stretch.filter(|s| !s.open_above).map(|s| s.to);
     let other = limits.iter().filter(|l| !l.alone && l.name != OPTICAL).find_map(|l| match l.end {

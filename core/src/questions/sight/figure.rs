@@ -26,8 +26,8 @@ pub fn draw(asked: &Asked, case: &Case) -> Figure {
     let small = show.small_unit(height);
     let long = Quantity::Distance.usual(show.0);
     let mut marks = vec![
-        Mark::Level { y: y(case.allowed), label: format!("+ {} allowed", show.own(case.allowed)) },
-        Mark::Level { y: y(-case.allowed), label: format!("− {} allowed", show.own(case.allowed)) },
+        Mark::Level { y: y(case.allowed), label: format!("+ {} allowed", show.entered(case.allowed)) },
+        Mark::Level { y: y(-case.allowed), label: format!("− {} allowed", show.entered(case.allowed)) },
         Mark::Upright {
             x: x(case.distance),
             label: format!("this sight, {}", show.distance(case.distance, Round::Near)),
@@ -47,7 +47,7 @@ pub fn draw(asked: &Asked, case: &Case) -> Figure {
         show.small(here.bias, here.half()),
         show.small(here.bias - here.below, here.half()),
         show.small(here.bias + here.above, here.half()),
-        show.own(case.allowed),
+        show.entered(case.allowed),
     );
     Figure {
         title: "Error against distance".to_owned(),

@@ -52,7 +52,7 @@ pub const OPTICAL: &str = "tolerance, every term together";
 /// All limits, the ruling one first; after them each term by itself, the strongest first.
 pub fn all(asked: &Asked, case: &Case) -> Vec<Limit> {
     let show = asked.show();
-    let allowed = show.own(case.allowed);
+    let allowed = show.entered(case.allowed);
     let optical = |name, count, why: String, alone| {
         let end = match case.reach(count) {
             None => End::Always,
