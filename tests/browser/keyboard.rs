@@ -14,14 +14,6 @@ pub fn run(tally: &mut Tally, stage: &Stage) {
 fn decide(stage: &Stage) -> Result<()> {
     let browser = stage.browser;
     let _server = stage.open()?;
-    let f = "return [document.hasFocus(), screenX, screenY, outerWidth, outerHeight, innerWidth]";
-    eprintln!("focus {:?}", browser.js(f));
-    browser.js("window.focus(); return 0;")?;
-    eprintln!("focus {:?}", browser.js(f));
-    browser.tap("h1")?;
-    eprintln!("focus {:?}", browser.js(f));
-    std::thread::sleep(std::time::Duration::from_secs(2));
-    eprintln!("focus {:?}", browser.js(f));
     let at = |css: &str| -> Result<bool> {
         let here = browser.js(&format!("return document.activeElement.matches({})", json!(css)))?;
         Ok(here == json!(true))

@@ -48,7 +48,7 @@ impl Firefox {
         // Not headless: a page without a window gets no events of focus.
         let display = Display::start(log)?;
         browser.env("DISPLAY", &display.name).env("MOZ_ENABLE_WAYLAND", "0");
-        browser.args(["--no-remote", "--profile"]).arg(&profile.0);
+        browser.args(["--no-remote", "--remote-allow-system-access", "--headless", "--profile"]).arg(&profile.0);
         browser.arg(format!("--remote-debugging-port={port}")).arg("about:blank");
         let browser = Child::start(&browser, log)?;
         let start = Instant::now();
@@ -67,7 +67,11 @@ impl Firefox {
         firefox.version = format!("firefox {}", session["capabilities"]["browserVersion"]).replace('"', "");
         let tree = firefox.send("browsingContext.getTree", json!({}))?;
         firefox.tab = tree["contexts"][0]["context"].as_str().ok_or("no tab")?.to_owned().into();
-        firefox.tab("browsingContext.activate", json!({}))?;
+        let windows = firefox.send("browsingContext.getTree", json!({ "moz:scope": "chrome" }))?;
+        let target = json!({ "context": windows["contexts"][0]["context"] });
+        let focus = "gBrowser.selectedBrowser.focus(); 0";
+        let params = json!({ "expression": focus, "target": target, "awaitPromise": false });
+        eprintln!("{:?} {:?}", windows, firefox.send("script.evaluate", params));
         Ok(firefox)
     }
 
