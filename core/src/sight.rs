@@ -24,7 +24,9 @@ pub struct SightDoubt {
 /// nothing grows with distance.
 ///
 /// With X = D², (U_k/2R)² X² + (U_α² + U_g²) X + U_0² = allowed², solved in the form that does not cancel:
-/// X = 2c / (b + √(b² + 4ac)), c = allowed² − U_0².
+/// X = 2c / (b + √(b² + 4ac)), c = allowed² − U_0². U_k, U_α, U_g, U_0 are the members of [`SightDoubt`], R the radius;
+/// metres. By the parabola: 1e-8 of itself off the exact form below 1 km. Source: the adding of independent doubts in
+/// squares, JCGM 100:2008, 5.1.2; 50-digit rows.
 pub fn reach(allowed: Metres, doubt: SightDoubt, r: Metres) -> Option<Metres> {
     let c = (allowed.0 - doubt.reading.0) * (allowed.0 + doubt.reading.0);
     if c.is_nan() || c < 0.0 {
@@ -40,7 +42,8 @@ pub fn reach(allowed: Metres, doubt: SightDoubt, r: Metres) -> Option<Metres> {
 /// `None` where not even equal sights do. `common` is the correlation of k on the two sights.
 ///
 /// e² = [allowed² − 2U_0² − 2(D U_g)² − (1−ρ) D⁴ U_k²/2R²] / [U_α² + U_g²/2 + (D U_k/R)²]. Of what k's doubt adds with
-/// e² no more than (3 + ρ)/4 is real: the rest is on the safe side, as long as e ≤ 2D.
+/// e² no more than (3 + ρ)/4 is real: the rest is on the safe side, as long as e ≤ 2D; beyond that there is no such setup.
+/// Symbols and source as [`reach`], D = `mean`, ρ = `common`.
 pub fn imbalance(allowed: Metres, mean: Metres, doubt: SightDoubt, common: f64, r: Metres) -> Option<Metres> {
     let swing = mean.0 * doubt.k / r.0;
     let kept = (1.0 - common) * mean.0 * mean.0 * swing * swing / 2.0;

@@ -94,7 +94,7 @@ impl Budget {
             Part { term: Term::Distance, error: Estimate::even(0.0, distance) },
         ]
     }
-    /// One sight by itself: curvature s²/2R, refraction −k s²/2R (exact forms of [`ray`]), collimation α·s, reading
+    /// One sight by itself, metres; JCGM 100:2008, 5.1.2 for what is added in squares: curvature s²/2R, refraction −k s²/2R (exact forms of [`ray`]), collimation α·s, reading
     /// √(U₀² + (g·s)²), distance |d bias/ds|·U_s.
     pub fn sight(&self, d: Metres) -> [Part; 5] {
         let curvature = ray::curvature(d, self.radius).0;

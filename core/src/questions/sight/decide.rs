@@ -67,6 +67,8 @@ pub fn decide(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer)
     let far = case.reach(Count::All);
     let other = case.other_range();
     let given = asked.given(&OTHER);
+    let alone =
+        far.map_or("at no distance".to_owned(), |s| format!("no further than {}", show.distance(s.to, Round::Down)));
     let long_enough = far.filter(|s| s.to >= WORTH_SHORTENING * case.distance && s.to < case.distance);
     if given && let Some(range) = other {
         verdict.word = BALANCE;
@@ -85,14 +87,12 @@ pub fn decide(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer)
     } else if !given && let Some(range) = other {
         verdict.word = BALANCE;
         verdict.number = range_words(range, show);
-        let alone = far
-            .map_or("at no distance".to_owned(), |s| format!("no further than {}", show.distance(s.to, Round::Down)));
         verdict.sentence = format!("By itself it may run {alone}. {rule}");
     } else if case.both_ways().worst() <= case.allowed {
         verdict.word = BOTH;
         verdict.number = format!("± {}", show.own(case.both_ways().half()));
         verdict.sentence = format!(
-            "From both ends, at the same time if you can, curvature and collimation cancel and the doubt of the mean is {}. {rule}",
+            "Seen from both ends, at the same time if you can, curvature and collimation cancel; the doubt of the mean is {}. From one end it may run {alone}. {rule}",
             show.own(case.both_ways().half())
         );
     } else {
