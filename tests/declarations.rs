@@ -40,21 +40,29 @@ fn names_are_unique_and_shared_fields_are_one() {
 #[test]
 fn every_field_says_what_it_is() {
     for question in questions() {
-        for field in question.fields {
-            let name = format!("{} {}", question.id, field.name);
-            assert!(!field.label.is_empty() && !field.help.is_empty() && !field.example.is_empty(), "{name}");
-            assert!(!(field.required && !field.default.is_empty()), "{name}: required and assumed at once");
-            match field.kind {
-                Kind::Number { min, max, why, negative, .. } => {
-                    assert!(min < max && !why.is_empty() && negative == (min < 0.0), "{name}");
-                }
-                Kind::Choice { options, why } => {
-                    assert!(options.len() > 1 && !why.is_empty(), "{name}");
-                    assert!(
-                        unique(options.iter().map(|o| o.value)) && unique(options.iter().map(|o| o.label)),
-                        "{name}"
-                    );
-                }
+        say_what_they_are(question.id, question.fields);
+    }
+}
+
+fn say_what_they_are(of: &str, fields: &[Field]) {
+    for field in fields {
+        let name = format!("{of} {}", field.name);
+        assert!(!field.label.is_empty() && !field.help.is_empty() && !field.example.is_empty(), "{name}");
+        assert!(!(field.required && !field.default.is_empty()), "{name}: required and assumed at once");
+        match field.kind {
+            Kind::Number { min, max, why, negative, .. } => {
+                assert!(min < max && !why.is_empty() && negative == (min < 0.0), "{name}");
+            }
+            Kind::Text { most, why } => assert!(most > 0 && !why.is_empty(), "{name}"),
+            Kind::Table { columns, row, most, why } => {
+                assert!(columns.len() > 1 && !row.is_empty() && most > 1 && !why.is_empty(), "{name}");
+                assert!(unique(columns.iter().map(|c| c.name)) && unique(columns.iter().map(|c| c.label)), "{name}");
+                assert!(columns.iter().all(|c| !matches!(c.kind, Kind::Table { .. })), "{name}: a table in a table");
+                say_what_they_are(&name, columns);
+            }
+            Kind::Choice { options, why } => {
+                assert!(options.len() > 1 && !why.is_empty(), "{name}");
+                assert!(unique(options.iter().map(|o| o.value)) && unique(options.iter().map(|o| o.label)), "{name}");
             }
         }
     }
@@ -97,6 +105,7 @@ fn nothing_entered_asks_for_what_is_required_and_for_nothing_else() {
 fn right(field: &Field) -> Vec<String> {
     let mut entries = vec![field.example.to_owned(), field.default.to_owned()];
     match field.kind {
+        Kind::Text { .. } | Kind::Table { .. } => {}
         Kind::Choice { options, .. } => entries.extend(options.iter().map(|o| o.value.to_owned())),
         Kind::Number { quantity, min, max, .. } => {
             for unit in quantity.info().units {

@@ -120,11 +120,24 @@ fn text(dice: &mut Dice, question: &Question, field: usize) -> String {
                 let units = quantity.info().units;
                 format!("{number} {}", units[dice.roll(units.len())].symbol)
             }
+            Kind::Text { .. } => dice.pick(SCRAPS).to_owned(),
+            Kind::Table { .. } => scraps_in_rows(dice),
             Kind::Choice { options, .. } => options[dice.roll(options.len())].value.to_owned(),
         },
         4 => char::from_u32(dice.roll(0x11_0000) as u32).map_or(String::new(), |c| c.to_string()),
         _ => String::new(),
     }
+}
+
+/// Lines of cells, ragged, with any separator and any text.
+fn scraps_in_rows(dice: &mut Dice) -> String {
+    let separator = dice.pick(&["\t", ";", ",", " ", "\t\t"]);
+    let line = |dice: &mut Dice| {
+        let cells: Vec<&str> = (0..dice.roll(8)).map(|_| dice.pick(SCRAPS)).collect();
+        format!("{}{}", dice.pick(&["", "", "", "~"]), cells.join(separator))
+    };
+    let lines: Vec<String> = (0..dice.roll(12)).map(|_| line(dice)).collect();
+    lines.join(dice.pick(&["\n", "\r\n", "\n\n"]))
 }
 
 #[test]

@@ -1,8 +1,11 @@
 //! The wasm answers as the native code does, byte for byte.
 
 use crate::Stage;
+use farstaff::quantity::unit::Quantity;
+use farstaff::question::{Field, Kind, Question, ask, catalogue};
 use farstaff_tests::steps::{Tally, check, same};
-use farstaff_tests::{Result, entries, words};
+use farstaff_tests::table::{entries, rows};
+use farstaff_tests::{Result, entry, words};
 use serde_json::{Value, json};
 
 /// Both sides are written by the engine's own JSON.stringify, which would hide the sign of a zero.
@@ -38,18 +41,70 @@ pub fn run(tally: &mut Tally, stage: &Stage) {
 }
 
 fn answers(stage: &Stage) -> Result<()> {
-    let rows: Vec<[String; 3]> = entries()
+    let mut asked = entries()?;
+    for question in catalogue().questions {
+        asked.extend(rows(question.id)?.into_iter().map(|row| (question.id.to_owned(), row.entry)));
+        asked.extend(edges(question).into_iter().map(|entry| (question.id.to_owned(), entry)));
+    }
+    check(asked.len() > 300, || format!("{} rows only", asked.len()))?;
+    let rows: Vec<[String; 3]> = asked
         .into_iter()
         .map(|(id, entry)| {
-            let answer = farstaff::question::ask(id, entry).ok_or(format!("no question named {id}"))?;
-            Ok([id.to_owned(), entry.to_owned(), serde_json::to_string(&answer).map_err(words)?])
+            let answer = ask(&id, &entry).ok_or(format!("no question named {id}"))?;
+            let answer = serde_json::to_string(&answer).map_err(words)?;
+            Ok([id, entry, answer])
         })
         .collect::<Result<_>>()?;
-    check(!rows.is_empty(), || "there are no reference entries".to_owned())?;
     let _server = stage.open()?;
     let rows = serde_json::to_string(&rows).map_err(words)?;
     let wrong = stage.browser.js(&COMPARE.replace("ROWS", &json!(rows).to_string()))?;
-    same(wrong, json!([]))
+    check(wrong == json!([]), || format!("{:.2000}", wrong.to_string()))
+}
+
+/// Entries of a question in which one field stands at an edge of what it may be, in each of its units, or beyond it; and
+/// each pair of choices.
+fn edges(question: &Question) -> Vec<String> {
+    let required: Vec<(&str, &str)> =
+        question.fields.iter().filter(|field| field.required).map(|field| (field.name, field.example)).collect();
+    let with = |more: &[(&str, &str)]| {
+        let base = required.iter().filter(|(name, _)| more.iter().all(|(other, _)| other != name));
+        entry(&base.copied().chain(more.iter().copied()).collect::<Vec<_>>())
+    };
+    let mut all = vec![];
+    for field in question.fields {
+        all.extend(texts(field).iter().map(|text| with(&[(field.name, text)])));
+    }
+    let choices = question.fields.iter().filter(|field| matches!(field.kind, Kind::Choice { .. }));
+    let choices: Vec<&Field> = choices.collect();
+    for (i, one) in choices.iter().enumerate() {
+        for other in &choices[..i] {
+            for (a, b) in texts(one).iter().flat_map(|a| texts(other).into_iter().map(move |b| (a.clone(), b))) {
+                all.push(with(&[(one.name, &a), (other.name, &b)]));
+            }
+        }
+    }
+    all
+}
+
+/// Texts that a field may come to hold.
+fn texts(field: &Field) -> Vec<String> {
+    let mut all = vec![field.example.to_owned(), "12,5".to_owned(), "far".to_owned()];
+    match field.kind {
+        Kind::Text { .. } | Kind::Table { .. } => {}
+        Kind::Choice { options, .. } => all.extend(options.iter().map(|option| option.value.to_owned())),
+        Kind::Number { quantity, min, max, .. } => {
+            for unit in quantity.info().units {
+                for si in [min, max, min + (max - min) / 3.0, max * 1.01, min - 1.0] {
+                    all.extend(in_unit(quantity, unit.symbol, si));
+                }
+            }
+        }
+    }
+    all
+}
+
+fn in_unit(quantity: Quantity, symbol: &str, si: f64) -> Option<String> {
+    Some(format!("{} {symbol}", quantity.unit(symbol)?.from_si(si)?))
 }
 
 /// JavaScript has one kind of number: 5.0 comes back as 5.

@@ -41,10 +41,23 @@ pub struct Answer {
 pub struct Problem {
     /// Name of the field.
     pub field: &'static str,
+    /// Where in a table it is wrong.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub cell: Option<Cell>,
     /// What to do.
     pub message: String,
     /// What may have been meant.
     pub fixes: Vec<Fix>,
+}
+
+/// A place in a table.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Cell {
+    /// Line of the table's text, from 0; struck rows count.
+    pub row: usize,
+    /// Column, from 0.
+    pub column: usize,
 }
 
 /// An entry that may have been meant: one tap puts it in.
@@ -55,6 +68,9 @@ pub struct Fix {
     pub label: String,
     /// Field to set.
     pub field: &'static str,
+    /// Where in a table to set it.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub cell: Option<Cell>,
     /// Its new text, without unit.
     pub text: String,
     /// Its new unit, empty for none.

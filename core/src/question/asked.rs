@@ -1,17 +1,21 @@
 //! Reading an entry: text by field name → what was read and what was wrong. It never fails and never guesses silently.
 
+mod cell;
 mod echo;
 mod entered;
+mod table;
 
 use super::answer::{Fix, Level, Note, Problem, Read};
 use super::field::{Field, Kind};
 use super::{Question, site};
 use crate::quantity::show::Show;
-use crate::quantity::unit::{Quantity, System, Unit};
-use entered::Entered;
+use crate::quantity::unit::{System, Unit};
+pub use cell::What;
+use cell::{Taken, choose, clip};
+pub use table::Row;
 
 /// An entry as it was read.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone)]
 pub struct Asked {
     /// What was wrong.
     pub problems: Vec<Problem>,
@@ -24,6 +28,7 @@ pub struct Asked {
     /// Which unit a bare number has, and which the answer is shown in.
     pub system: System,
     values: Vec<Value>,
+    rows: Vec<(&'static str, Vec<Row>)>,
 }
 
 #[derive(Debug, Clone, PartialEq)]
@@ -36,140 +41,129 @@ struct Value {
     bare: bool,
 }
 
-#[derive(Debug, Clone, PartialEq)]
-enum What {
-    Number(f64, Unit),
-    Choice(&'static str),
+/// The pairs of a form.
+struct Form(Vec<(String, String)>);
+
+impl Form {
+    /// The last one counts, as the last thing a person did.
+    fn get(&self, name: &str) -> &str {
+        self.0.iter().rev().find(|p| p.0 == name).map_or("", |p| &p.1)
+    }
+    fn unit_of(&self, name: &str) -> &str {
+        self.get(&format!("{name}.unit")).trim()
+    }
 }
+
+type Canonical<'a> = form_urlencoded::Serializer<'a, String>;
 
 impl Asked {
     /// Reads `entry`, in the form an HTML form submits, against the fields of `question`.
     pub fn read(question: &Question, entry: &str) -> Asked {
-        let pairs: Vec<(String, String)> = form_urlencoded::parse(entry.as_bytes())
-            .map(|(name, text)| (name.into_owned(), text.into_owned()))
-            .collect();
-        // The last one counts, as the last thing a person did.
-        let typed = |name: &str| pairs.iter().rev().find(|p| p.0 == name).map_or("", |p| p.1.trim());
-        let system = match choose(&site::UNITS, typed(site::UNITS.name)) {
+        let pairs = form_urlencoded::parse(entry.as_bytes()).map(|(name, text)| (name.into_owned(), text.into_owned()));
+        let form = Form(pairs.collect());
+        let system = match choose(&site::UNITS, form.get(site::UNITS.name).trim()) {
             Ok("foot") => System::Foot,
             Ok("survey_foot") => System::SurveyFoot,
             _ => System::Metric,
         };
-        let mut asked =
-            Asked { problems: vec![], notes: vec![], read: vec![], entry: String::new(), system, values: vec![] };
+        let mut asked = Asked {
+            problems: vec![],
+            notes: vec![],
+            read: vec![],
+            entry: String::new(),
+            system,
+            values: vec![],
+            rows: vec![],
+        };
         let mut canonical = form_urlencoded::Serializer::new(String::new());
         for field in question.fields {
-            let text = typed(field.name);
-            let picked = typed(&format!("{}.unit", field.name));
-            let kept = match field.kind {
-                Kind::Choice { .. } => asked.read_choice(field, text),
-                Kind::Number { quantity, .. } => asked.read_number(field, quantity, text, picked),
-            };
-            match kept {
-                Some(kept) => {
-                    if !kept.is_empty() {
-                        canonical.append_pair(field.name, &kept);
-                    }
-                }
-                None => {
-                    canonical.append_pair(field.name, text);
-                    if !picked.is_empty() {
-                        canonical.append_pair(&format!("{}.unit", field.name), picked);
-                    }
-                }
+            match field.kind {
+                Kind::Table { columns, .. } => asked.read_table(field, columns, &form, &mut canonical),
+                _ => asked.read_field(field, &form, &mut canonical),
             }
         }
         asked.entry = canonical.finish();
+        asked.name_strangers(question, &form);
+        asked
+    }
+
+    fn read_field(&mut self, field: &'static Field, form: &Form, canonical: &mut Canonical) {
+        let (typed, picked) = (form.get(field.name).trim(), form.unit_of(field.name));
+        let given = !typed.is_empty();
+        let text = if given { typed } else { field.default };
+        if text.is_empty() {
+            if field.required {
+                self.problem(field, cell::missing(field), vec![]);
+            }
+            return;
+        }
+        match cell::take(field, self.system, text, if given { picked } else { "" }) {
+            Ok(taken) => {
+                let Taken { what, text, bare, kept, also } = taken;
+                if let Some(fix) = also {
+                    let text = format!("{} was read as {text}. Is it {}?", field.label, fix.text);
+                    self.notes.push(Note { level: Level::Caution, text, fixes: vec![fix] });
+                }
+                let (unit, echo) = match (&what, field.kind) {
+                    (What::Number(si, unit), Kind::Number { quantity, .. }) => {
+                        (unit.symbol, echo::words(quantity, *si, unit, self.show()))
+                    }
+                    _ => ("", String::new()),
+                };
+                self.read.push(Read { field: field.name, text, unit, echo, assumed: !given });
+                self.values.push(Value { field: field.name, what, given, bare });
+                canonical.append_pair(field.name, &kept);
+            }
+            Err((message, fixes)) => {
+                self.problem(field, message, fixes);
+                canonical.append_pair(field.name, typed);
+                if !picked.is_empty() {
+                    canonical.append_pair(&format!("{}.unit", field.name), picked);
+                }
+            }
+        }
+    }
+
+    fn read_table(&mut self, field: &'static Field, columns: &'static [Field], form: &Form, canonical: &mut Canonical) {
+        let text = form.get(field.name);
+        let picked = |column: &Field| form.unit_of(&format!("{}.{}", field.name, column.name)).to_owned();
+        let table = table::read(field, columns, self.system, text, picked);
+        if table.text.is_empty() {
+            if field.required {
+                self.problem(field, cell::missing(field), vec![]);
+            }
+        } else {
+            canonical.append_pair(field.name, &table.text);
+            for (column, unit) in columns.iter().zip(&table.units) {
+                if !unit.is_empty() {
+                    canonical.append_pair(&format!("{}.{}.unit", field.name, column.name), unit);
+                }
+            }
+            self.read.push(Read { field: field.name, text: table.text, unit: "", echo: table.echo, assumed: false });
+        }
+        self.problems.extend(table.problems);
+        self.notes.extend(table.notes.into_iter().map(|text| Note { level: Level::Note, text, fixes: vec![] }));
+        self.rows.push((field.name, table.rows));
+    }
+
+    /// Says what the entry holds that the question does not ask.
+    fn name_strangers(&mut self, question: &Question, form: &Form) {
         let known = |name: &str| {
-            let name = name.strip_suffix(".unit").unwrap_or(name);
+            let name = name.split('.').next().unwrap_or(name);
             question.fields.iter().any(|f| f.name == name)
         };
-        let mut strangers: Vec<&str> = pairs.iter().map(|p| p.0.as_str()).filter(|n| !known(n)).collect();
+        let mut strangers: Vec<&str> = form.0.iter().map(|p| p.0.as_str()).filter(|n| !known(n)).collect();
         strangers.dedup();
         if let [first, ..] = strangers.as_slice() {
             let more = if strangers.len() > 1 { " and others" } else { "" };
             let text =
                 format!("The entry also holds “{}”{more}, which is not asked here. It was left out.", clip(first));
-            asked.notes.push(Note { level: Level::Caution, text, fixes: vec![] });
-        }
-        asked
-    }
-
-    /// Reads a choice; `None` where something was wrong, else the text to keep.
-    fn read_choice(&mut self, field: &'static Field, text: &str) -> Option<String> {
-        let given = !text.is_empty();
-        let text = if given { text } else { field.default };
-        if text.is_empty() {
-            if field.required {
-                self.problem(field, format!("Choose one for “{}”.", field.label), vec![]);
-                return None;
-            }
-            return Some(String::new());
-        }
-        match choose(field, text) {
-            Ok(value) => {
-                self.values.push(Value { field: field.name, what: What::Choice(value), given, bare: false });
-                self.read.push(Read {
-                    field: field.name,
-                    text: value.to_owned(),
-                    unit: "",
-                    echo: String::new(),
-                    assumed: !given,
-                });
-                Some(value.to_owned())
-            }
-            Err(labels) => {
-                let message =
-                    format!("“{}” is not one of the choices for {}: {labels}.", clip(text), lower(field.label));
-                self.problem(field, message, vec![]);
-                None
-            }
-        }
-    }
-
-    /// Reads a number; `None` where something was wrong, else the text to keep.
-    fn read_number(&mut self, field: &'static Field, quantity: Quantity, text: &str, picked: &str) -> Option<String> {
-        let given = !text.is_empty();
-        let text = if given { text } else { field.default };
-        if text.is_empty() {
-            if field.required {
-                self.problem(field, format!("Enter {}.", the(field.label)), vec![]);
-                return None;
-            }
-            return Some(String::new());
-        }
-        let picked = if given { picked } else { "" };
-        match entered::read(field, quantity, self.system, text, picked) {
-            Ok(Entered { number, unit, bare, si }) => {
-                if let Some(also) = number.also.as_ref().filter(|also| entered::fits(field, &unit, also)) {
-                    let fix = Fix {
-                        label: format!("It is {also}"),
-                        field: field.name,
-                        text: also.clone(),
-                        unit: unit.symbol,
-                    };
-                    let text = format!("{} was read as {}. Is it {also}?", field.label, number.text);
-                    self.notes.push(Note { level: Level::Caution, text, fixes: vec![fix] });
-                }
-                self.read.push(Read {
-                    field: field.name,
-                    text: number.text.clone(),
-                    unit: unit.symbol,
-                    echo: echo::words(quantity, si, &unit, Show(self.system)),
-                    assumed: !given,
-                });
-                self.values.push(Value { field: field.name, what: What::Number(si, unit), given, bare });
-                Some(entered::written(&number, &unit, bare && quantity == Quantity::Refraction))
-            }
-            Err((message, fixes)) => {
-                self.problem(field, message, fixes);
-                None
-            }
+            self.notes.push(Note { level: Level::Caution, text, fixes: vec![] });
         }
     }
 
     fn problem(&mut self, field: &'static Field, message: String, fixes: Vec<Fix>) {
-        self.problems.push(Problem { field: field.name, message, fixes });
+        self.problems.push(Problem { field: field.name, cell: None, message, fixes });
     }
 
     fn value(&self, field: &Field) -> Option<&Value> {
@@ -177,10 +171,7 @@ impl Asked {
     }
     /// SI value of a number, entered or by default; `None` where there is neither.
     pub fn number(&self, field: &Field) -> Option<f64> {
-        match self.value(field)?.what {
-            What::Number(si, _) => Some(si),
-            What::Choice(_) => None,
-        }
+        self.value(field)?.what.number()
     }
     /// SI value of a number the question cannot do without; its default or required entry is held by a test.
     pub fn must(&self, field: &Field) -> f64 {
@@ -190,15 +181,12 @@ impl Asked {
     pub fn unit(&self, field: &Field) -> Option<Unit> {
         match self.value(field)?.what {
             What::Number(_, unit) => Some(unit),
-            What::Choice(_) => None,
+            _ => None,
         }
     }
     /// What was chosen, by the person or by default; empty where nothing was.
     pub fn choice(&self, field: &Field) -> &'static str {
-        match self.value(field).map(|v| &v.what) {
-            Some(What::Choice(value)) => value,
-            _ => "",
-        }
+        self.value(field).map_or("", |v| v.what.choice())
     }
     /// Entered by the person, not by default.
     pub fn given(&self, field: &Field) -> bool {
@@ -208,42 +196,16 @@ impl Asked {
     pub fn bare(&self, field: &Field) -> bool {
         self.value(field).is_some_and(|v| v.bare)
     }
-    /// The number as it was typed, without unit.
+    /// What was typed, without unit.
     pub fn text(&self, field: &Field) -> &str {
         self.read.iter().find(|r| r.field == field.name).map_or("", |r| &r.text)
+    }
+    /// The rows of a table that count: neither struck nor empty.
+    pub fn rows(&self, field: &Field) -> &[Row] {
+        self.rows.iter().find(|r| r.0 == field.name).map_or(&[], |r| &r.1)
     }
     /// How the answer shows its numbers.
     pub fn show(&self) -> Show {
         Show(self.system)
     }
-}
-
-/// The option of a choice that was meant, by value or by label; else the labels there are.
-fn choose(field: &Field, text: &str) -> Result<&'static str, String> {
-    let Kind::Choice { options, .. } = field.kind else { return Err(String::new()) };
-    let found = options.iter().find(|o| o.value.eq_ignore_ascii_case(text) || o.label.eq_ignore_ascii_case(text));
-    found.map(|o| o.value).ok_or_else(|| options.iter().map(|o| o.label).collect::<Vec<_>>().join(", "))
-}
-
-/// A label inside a sentence, with its article.
-fn the(label: &str) -> String {
-    let label = lower(label);
-    if label.starts_with("the ") { label } else { format!("the {label}") }
-}
-
-/// A label inside a sentence.
-fn lower(label: &str) -> String {
-    let mut letters = label.chars();
-    match (letters.next(), label.chars().nth(1)) {
-        (Some(first), Some(second)) if second.is_ascii_lowercase() => {
-            std::iter::once(first.to_ascii_lowercase()).chain(letters).collect()
-        }
-        _ => label.to_owned(),
-    }
-}
-
-/// What was typed, short enough for a sentence.
-fn clip(text: &str) -> String {
-    let short: String = text.chars().filter(|c| !c.is_control()).take(24).collect();
-    if short.len() < text.len() { format!("{short}…") } else { short }
 }

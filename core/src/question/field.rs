@@ -52,6 +52,26 @@ pub enum Kind {
         /// Why these and no others.
         why: &'static str,
     },
+    /// Words: the name of a point, a remark.
+    Text {
+        /// Longest, in characters.
+        most: usize,
+        /// Why no longer.
+        why: &'static str,
+    },
+    /// Rows of columns, as a spreadsheet copies them: a tab between cells, a new line for each row. A line that begins
+    /// with `~` is a row that was struck: it is kept and counts for nothing. The unit of a column comes as
+    /// `NAME.COLUMN.unit`.
+    Table {
+        /// What each row holds; no table in it.
+        columns: &'static [Field],
+        /// A row in the words of the trade: "point", "setup".
+        row: &'static str,
+        /// Most rows.
+        most: usize,
+        /// Why no more.
+        why: &'static str,
+    },
 }
 
 /// One of the things that may be chosen.
@@ -78,6 +98,33 @@ impl Field {
         };
         let kind = Kind::Choice { options, why };
         Field { name, label, help: "", kind, default: "", example, required: false, shared: false, group: "" }
+    }
+    /// Words of at most `most` characters.
+    pub const fn text(
+        name: &'static str,
+        label: &'static str,
+        most: usize,
+        why: &'static str,
+        example: &'static str,
+    ) -> Field {
+        Field { kind: Kind::Text { most, why }, ..Field::choice(name, label, &[], "") }.example(example)
+    }
+    /// Rows of `columns`, each called `row`.
+    pub const fn table(name: &'static str, label: &'static str, columns: &'static [Field], row: &'static str) -> Field {
+        let kind = Kind::Table { columns, row, most: 0, why: "" };
+        Field { kind, ..Field::choice(name, label, &[], "") }
+    }
+    /// Most rows of a table, and why no more.
+    pub const fn rows(mut self, limit: usize, reason: &'static str) -> Field {
+        if let Kind::Table { columns, row, .. } = self.kind {
+            self.kind = Kind::Table { columns, row, most: limit, why: reason };
+        }
+        self
+    }
+    /// An entry that is right.
+    pub const fn example(mut self, example: &'static str) -> Field {
+        self.example = example;
+        self
     }
     /// Range in SI units, ends included, and why.
     pub const fn range(mut self, low: f64, high: f64, reason: &'static str) -> Field {

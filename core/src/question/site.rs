@@ -201,7 +201,7 @@ pub fn doubt_k(asked: &Asked, answer: &mut Answer) {
     let unit: Option<Unit> = Quantity::Refraction.unit(symbol);
     let Some(converted) = unit.and_then(|u| u.to_si(k)) else { return };
     let text = asked.text(&K).to_owned();
-    let fix = |label: String, unit| Fix { label, field: K.name, text: text.clone(), unit };
+    let fix = |label: String, unit| Fix { label, field: K.name, cell: None, text: text.clone(), unit };
     let fixes = vec![
         fix(format!("{label}: k = {}", asked.show().k(converted)), symbol),
         fix(format!("It is k: k = {}", asked.show().k(k)), "k"),

@@ -1,10 +1,11 @@
 //! One number as it was entered: its digits, its unit, its SI value, and what to do where one of them is missing.
 
-use super::{Field, Fix, clip, the};
+use super::cell::{Wrong, clip, the};
 use crate::quantity::number::{self, NotANumber, Number};
 use crate::quantity::show::{Shown, significant};
 use crate::quantity::unit::{Quantity, System, Unit};
-use crate::question::field::Kind;
+use crate::question::answer::Fix;
+use crate::question::field::{Field, Kind};
 
 /// A number that was read.
 pub struct Entered {
@@ -17,9 +18,6 @@ pub struct Entered {
     /// What it comes to.
     pub si: f64,
 }
-
-/// What to do, and what may have been meant.
-type Wrong = (String, Vec<Fix>);
 
 /// Reads `text`, in the unit it brings, else the one `picked` beside the box, else the usual one of `system`.
 pub fn read(
@@ -101,7 +99,7 @@ fn of_degrees(field: &'static Field, quantity: Quantity, text: &str) -> Option<R
 
 fn fix(field: &'static Field, text: &str, unit: &Unit) -> Fix {
     let shown = Shown { text: text.to_owned(), unit: unit.symbol };
-    Fix { label: format!("It is {shown}"), field: field.name, text: text.to_owned(), unit: unit.symbol }
+    Fix { label: format!("It is {shown}"), field: field.name, cell: None, text: text.to_owned(), unit: unit.symbol }
 }
 
 fn unreadable(field: &'static Field, text: &str, unit: &Unit, why: NotANumber) -> Wrong {
