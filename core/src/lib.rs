@@ -10,6 +10,7 @@
 pub mod air;
 pub mod constants;
 pub mod doubt;
+pub mod horizon;
 pub mod limits;
 pub mod quantity;
 pub mod question;

@@ -15,3 +15,7 @@ pub struct Coefficient(pub f64);
 /// A small tilt of a line as rise over distance, e.g. the collimation error of a level; positive upwards.
 #[derive(Debug, Clone, Copy, PartialEq, PartialOrd)]
 pub struct Tilt(pub f64);
+
+/// An angle in radians.
+#[derive(Debug, Clone, Copy, PartialEq, PartialOrd)]
+pub struct Angle(pub f64);

@@ -1,6 +1,6 @@
 //! Firefox by WebDriver BiDi, which it speaks itself: no driver to install.
 
-use crate::child::{Child, Display, Scratch, find, free_port};
+use crate::child::{Child, Scratch, find, free_port};
 use crate::socket::Socket;
 use crate::{Result, words};
 use serde_json::{Value, json};
@@ -28,7 +28,6 @@ pub struct Firefox {
     pub version: String,
     killed: bool,
     _browser: Child,
-    _display: Display,
     _profile: Rc<Scratch>,
 }
 
@@ -45,10 +44,7 @@ impl Firefox {
             PREFERENCES.iter().map(|(name, value)| format!("user_pref('{name}', {value});\n")).collect();
         std::fs::write(profile.0.join("user.js"), lines).map_err(words)?;
         let mut browser = Command::new(find(&["firefox-esr", "firefox"])?);
-        // Not headless: a page without a window gets no events of focus.
-        let display = Display::start(log)?;
-        browser.env("DISPLAY", &display.name).env("MOZ_ENABLE_WAYLAND", "0");
-        browser.args(["--no-remote", "--remote-allow-system-access", "--headless", "--profile"]).arg(&profile.0);
+        browser.args(["--headless", "--no-remote", "--remote-allow-system-access", "--profile"]).arg(&profile.0);
         browser.arg(format!("--remote-debugging-port={port}")).arg("about:blank");
         let browser = Child::start(&browser, log)?;
         let start = Instant::now();
@@ -61,18 +57,22 @@ impl Firefox {
         };
         let link = RefCell::new(Link { socket, sent: 0 });
         let (tab, version) = Default::default();
-        let mut firefox =
-            Firefox { link, tab, version, killed: false, _browser: browser, _display: display, _profile: profile };
+        let mut firefox = Firefox { link, tab, version, killed: false, _browser: browser, _profile: profile };
         let session = firefox.send("session.new", json!({ "capabilities": { "alwaysMatch": {} } }))?;
         firefox.version = format!("firefox {}", session["capabilities"]["browserVersion"]).replace('"', "");
         let tree = firefox.send("browsingContext.getTree", json!({}))?;
         firefox.tab = tree["contexts"][0]["context"].as_str().ok_or("no tab")?.to_owned().into();
-        let windows = firefox.send("browsingContext.getTree", json!({ "moz:scope": "chrome" }))?;
+        Ok(firefox)
+    }
+
+    /// Opens an address and gives the page the focus, as a tap would: otherwise the browser's own bar has it.
+    pub fn go(&self, url: &str) -> Result<()> {
+        self.tab("browsingContext.navigate", json!({ "url": url, "wait": "complete" }))?;
+        let windows = self.send("browsingContext.getTree", json!({ "moz:scope": "chrome" }))?;
         let target = json!({ "context": windows["contexts"][0]["context"] });
         let focus = "gBrowser.selectedBrowser.focus(); 0";
         let params = json!({ "expression": focus, "target": target, "awaitPromise": false });
-        eprintln!("{:?} {:?}", windows, firefox.send("script.evaluate", params));
-        Ok(firefox)
+        self.send("script.evaluate", params).map(drop)
     }
 
     /// Opens a tab, closes the one there was.

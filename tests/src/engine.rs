@@ -56,10 +56,7 @@ impl Display for Engine {
 pub enum Key {
     Tab = 0xE004,
     Enter = 0xE006,
-    Shift = 0xE008,
-    Escape = 0xE00C,
-    Space = 0x20,
-    Down = 0xE015,
+    Up = 0xE013,
 }
 
 /// A running browser.
@@ -115,12 +112,9 @@ impl Browser {
     /// Opens an address.
     pub fn go(&self, url: &str) -> Result<()> {
         match self {
-            Chromium(session) | WebKit(session) => session.post("url", json!({ "url": url })),
-            Browser::Firefox(firefox) => {
-                firefox.tab("browsingContext.navigate", json!({ "url": url, "wait": "complete" }))
-            }
+            Chromium(session) | WebKit(session) => session.post("url", json!({ "url": url })).map(drop),
+            Browser::Firefox(firefox) => firefox.go(url),
         }
-        .map(drop)
     }
 
     /// Loads the page again.

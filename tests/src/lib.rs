@@ -6,6 +6,7 @@ pub mod engine;
 mod socket;
 pub mod sound;
 pub mod steps;
+pub mod table;
 pub mod webdriver;
 
 /// What went wrong, in words.
@@ -14,12 +15,6 @@ pub type Result<T, E = String> = std::result::Result<T, E>;
 /// Any error in words.
 pub fn words(error: impl std::fmt::Display) -> String {
     error.to_string()
-}
-
-/// Reference entries: question and entry, one `id?entry` a line.
-pub fn entries() -> Vec<(&'static str, &'static str)> {
-    let lines = include_str!("../tables/entries.txt").lines().filter(|line| !line.is_empty() && !line.starts_with('#'));
-    lines.filter_map(|line| line.split_once('?')).collect()
 }
 
 /// Texts by field name as an HTML form submits them.

@@ -1,5 +1,6 @@
 //! Serves a site on this machine only.
 
+use crate::budget::brotli;
 use crate::policy;
 use crate::site::{PAGE, SINGLE, Site};
 use anyhow::{Context, Result};
@@ -8,6 +9,7 @@ use hyper::body::{Bytes, Incoming};
 use hyper::header::{self, HeaderName, HeaderValue};
 use hyper::{Method, Request, Response, StatusCode, server::conn::http1, service::service_fn};
 use hyper_util::rt::TokioIo;
+use std::collections::BTreeMap;
 use std::convert::Infallible;
 use std::net::SocketAddr;
 use std::sync::{Arc, Mutex, PoisonError};
@@ -33,13 +35,15 @@ pub struct Server {
 
 struct Shared {
     site: Mutex<Site>,
+    /// Files that are sent compressed.
+    packed: Mutex<BTreeMap<String, Vec<u8>>>,
     log: Mutex<Vec<Seen>>,
 }
 
 impl Server {
     /// Starts on `port`; 0 takes a free one.
     pub fn start(site: Site, port: u16) -> Result<Server> {
-        let shared = Arc::new(Shared { site: Mutex::new(site), log: Mutex::default() });
+        let shared = Arc::new(Shared { site: Mutex::new(site), packed: Mutex::default(), log: Mutex::default() });
         let runtime = runtime::Builder::new_current_thread().enable_io().build()?;
         let listener =
             runtime.block_on(TcpListener::bind(("127.0.0.1", port))).with_context(|| format!("port {port}"))?;
@@ -67,6 +71,13 @@ impl Server {
     /// Serves other files from now on.
     pub fn deploy(&self, site: Site) {
         *self.shared.site.lock().unwrap_or_else(PoisonError::into_inner) = site;
+    }
+
+    /// Sends the files it has now compressed from now on, as a host does. It takes a second or, unoptimised, many.
+    pub fn compress(&self) {
+        let site = self.shared.site.lock().unwrap_or_else(PoisonError::into_inner).clone();
+        let packed = site.0.into_iter().map(|(name, bytes)| (name, brotli(&bytes))).collect();
+        *self.shared.packed.lock().unwrap_or_else(PoisonError::into_inner) = packed;
     }
 
     /// Everything asked for so far.
@@ -123,7 +134,14 @@ fn respond(shared: &Shared, request: &Request<Incoming>) -> Response<Full<Bytes>
             head(header::CONTENT_SECURITY_POLICY, &format!("{}; {}", policy::SERVED, policy::HEADER_ONLY));
         }
         head(header::CONTENT_TYPE, media_type(name));
-        *response.body_mut() = Full::from(bytes.clone());
+        let packed = shared.packed.lock().unwrap_or_else(PoisonError::into_inner).get(name).cloned();
+        match packed.filter(|_| reads_brotli(request)) {
+            Some(packed) => {
+                head(header::CONTENT_ENCODING, "br");
+                *response.body_mut() = Full::from(packed);
+            }
+            None => *response.body_mut() = Full::from(bytes.clone()),
+        }
     } else {
         head(header::CONTENT_TYPE, "text/plain; charset=utf-8");
         *response.status_mut() = StatusCode::NOT_FOUND;
@@ -135,6 +153,11 @@ fn respond(shared: &Shared, request: &Request<Incoming>) -> Response<Full<Bytes>
         status: response.status().as_u16(),
     });
     response
+}
+
+fn reads_brotli(request: &Request<Incoming>) -> bool {
+    let accepted = request.headers().get(header::ACCEPT_ENCODING).and_then(|value| value.to_str().ok());
+    accepted.is_some_and(|list| list.split(',').any(|one| one.trim() == "br"))
 }
 
 /// Media type by the end of the name.

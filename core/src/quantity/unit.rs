@@ -111,6 +111,10 @@ const KM: Unit = unit("km", &["kilometre", "kilometres", "kilometers"], 1000.0, 
 const FT: Unit = unit("ft", &["foot", "feet"], FOOT_M, 1.0);
 const FT_US: Unit = unit("ftUS", &["ft us", "us ft", "usft", "us-ft", "sft"], SURVEY_FOOT_M.0, SURVEY_FOOT_M.1);
 const MI: Unit = unit("mi", &["mile", "miles"], 5280.0 * FOOT_M, 1.0);
+/// International nautical mile: 1852 m exactly (First International Extraordinary Hydrographic Conference, Monaco, 1929).
+pub const NAUTICAL_MILE: Unit = unit("NM", &["nmi", "nautical mile", "nautical miles", "sea miles"], 1852.0, 1.0);
+/// Minute of arc, of an angle in radians: what a dip is shown in.
+pub const ARC_MINUTE: Unit = unit("′", &[], PI, 10_800.0);
 const MM_PER_M: Unit = unit("mm/m", &["‰"], 1.0, 1000.0);
 const PERCENT: Unit = unit("%", &["percent"], 1.0, 100.0);
 const PER_ONE: Unit = unit("of 1", &[], 1.0, 1.0);
@@ -136,6 +140,7 @@ const MILLIMETRE: UnitInfo = info(MM, "millimetre");
 const FOOT: UnitInfo = info(FT, "international foot");
 const SURVEY_FOOT: UnitInfo = info(FT_US, "US survey foot");
 const MILE: UnitInfo = info(MI, "mile");
+const SEA_MILE: UnitInfo = info(NAUTICAL_MILE, "nautical mile");
 const KILOMETRE: UnitInfo = info(KM, "kilometre");
 
 const fn same(name: Quantity, units: &'static [UnitInfo], usual: &'static str) -> QuantityInfo {
@@ -148,7 +153,7 @@ const fn lengths(name: Quantity, units: &'static [UnitInfo], metric: &'static st
 
 /// Every quantity.
 pub const QUANTITIES: &[QuantityInfo] = &[
-    lengths(Quantity::Distance, &[METRE, KILOMETRE, FOOT, SURVEY_FOOT, MILE], "m"),
+    lengths(Quantity::Distance, &[METRE, KILOMETRE, FOOT, SURVEY_FOOT, MILE, SEA_MILE], "m"),
     lengths(Quantity::Height, &[METRE, MILLIMETRE, FOOT, SURVEY_FOOT], "m"),
     lengths(Quantity::SmallLength, &[MILLIMETRE, info(CM, "centimetre"), METRE, FOOT, SURVEY_FOOT], "mm"),
     same(Quantity::Radius, &[KILOMETRE, METRE, MILE, FOOT, SURVEY_FOOT], "km"),
@@ -194,6 +199,7 @@ const ALL: &[Unit] = &[
     FT,
     FT_US,
     MI,
+    NAUTICAL_MILE,
     MM_PER_M,
     ARC_SECOND,
     MILLIGON,
