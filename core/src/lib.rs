@@ -12,6 +12,7 @@ pub mod constants;
 pub mod doubt;
 pub mod horizon;
 pub mod limits;
+pub mod line;
 pub mod quantity;
 pub mod question;
 mod questions;

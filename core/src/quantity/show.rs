@@ -133,6 +133,18 @@ impl Show {
         };
         Shown { text, unit: unit.symbol }
     }
+    /// The two ends of a range of distances, rounded inwards: to whole units where that leaves most of it.
+    pub fn range(self, from: f64, to: f64) -> (Shown, Shown) {
+        let (fine_from, fine_to) = (self.distance(from, Round::Up), self.distance(to, Round::Down));
+        let unit = Quantity::Distance.usual(self.0);
+        let (low, high) = (libm::ceil(in_unit(from, &unit)), libm::floor(in_unit(to, &unit)));
+        let coarse = fine_from.unit == unit.symbol && fine_to.unit == unit.symbol && high < 1000.0 && high - low >= 4.0;
+        if coarse {
+            let whole = |value: f64| Shown { text: places(value, 0), unit: unit.symbol };
+            return (whole(low), whole(high));
+        }
+        (fine_from, fine_to)
+    }
     /// A tilt of the line, mm/m and seconds of arc.
     pub fn tilt(self, rise: f64) -> String {
         let seconds = Quantity::Collimation.unit("″").and_then(|u| u.from_si(rise)).unwrap_or(0.0);

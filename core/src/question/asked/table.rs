@@ -234,8 +234,10 @@ fn without_empty_end(mut cells: Vec<String>) -> Vec<String> {
 /// Takes a first line of headings off; where they name columns, puts the cells in their order and takes their units.
 fn headings(lines: &mut Vec<Vec<String>>, columns: &[Field], units: &mut [String], notes: &mut Vec<String>) {
     let Some(first) = lines.first() else { return };
-    let words =
-        |c: &String| c.chars().any(|c| c.is_ascii_alphabetic() || !c.is_ascii()) && !c.starts_with(|c: char| c.is_ascii_digit() || c == STRUCK);
+    let words = |c: &String| {
+        c.chars().any(|c| c.is_ascii_alphabetic() || !c.is_ascii())
+            && !c.starts_with(|c: char| c.is_ascii_digit() || c == STRUCK)
+    };
     if first.len() < 2 || !first.iter().all(words) || !columns.iter().any(|c| matches!(c.kind, Kind::Number { .. })) {
         return;
     }

@@ -212,7 +212,7 @@ pub fn range_words(range: Stretch, show: Show) -> String {
         (true, false) => format!("up to {}", show.distance(range.to, Round::Down)),
         (false, true) => format!("from {} on", show.distance(range.from, Round::Up)),
         (false, false) => {
-            let (from, to) = (show.distance(range.from, Round::Up), show.distance(range.to, Round::Down));
+            let (from, to) = show.range(range.from, range.to);
             if from.unit == to.unit { format!("{} to {to}", from.text) } else { format!("{from} to {to}") }
         }
     }

@@ -1,7 +1,7 @@
 //! Error against distance: its band, the allowance and the reach.
 
 use super::case::{Case, Count};
-use crate::quantity::show::{Round, places};
+use crate::quantity::show::Round;
 use crate::quantity::unit::Quantity;
 use crate::question::Asked;
 use crate::question::figure::{Band, Figure, Mark, Series, Stroke, axis};
@@ -78,11 +78,7 @@ pub fn draw(asked: &Asked, case: &Case) -> Figure {
             Series { name: "no error".to_owned(), stroke: Stroke::Thin, x: vec![0.0, 1.0], y: vec![y(0.0), y(0.0)] },
         ],
         marks,
-        note: format!(
-            "Drawn to {} {} either way; what lies beyond runs along the edge.",
-            places(small.from_si(height).unwrap_or(0.0), 1),
-            small.symbol
-        ),
+        note: format!("Drawn to {} either way; what lies beyond runs along the edge.", show.entered(height)),
         table: "parts",
     }
 }

@@ -1,0 +1,73 @@
+//! A line over ground: held to 100-digit arithmetic, to figures of others, and to what holds for every line.
+//!
+//! The rows are made by `tests/tables/make_line_rows.py`, which says what its columns are.
+#![allow(clippy::unwrap_used, clippy::panic, clippy::indexing_slicing, reason = "a test may panic")]
+
+use farstaff::line::Line;
+use farstaff::line::profile::{Least, Profile};
+use farstaff::quantity::{Coefficient, Metres};
+use std::collections::BTreeMap;
+
+const R: Metres = Metres(6_371_000.0);
+const ROWS: &str = include_str!("rows/line.tsv");
+
+/// What is promised, in ulps of the reference times the conditioning of the row. A promise that is broken fails, and so
+/// does one that is looser than what is measured.
+const PROMISES: &[(&str, f64)] = &[
+    ("height", 4.0),
+    ("space", 4.0),
+    ("handbook", 2.0),
+    ("grazing_k", 4.0),
+    ("raise_a", 4.0),
+    ("raise_both", 4.0),
+];
+
+fn line(a: f64, b: f64, s: f64, k: f64) -> Line {
+    Line::new(Metres(a), Metres(b), Metres(s), Coefficient(k), R).unwrap()
+}
+
+// --- 100 digits ---
+
+/// What core makes of a row.
+fn core(function: &str, n: &[f64]) -> f64 {
+    let of = |k: f64| Line::new(Metres(n[0]), Metres(n[1]), Metres(n[2]), Coefficient(k), Metres(n[n.len() - 1])).unwrap();
+    let x = Metres(n[3]);
+    let one = |top: usize| Profile { at_m: &n[3..4], top_m: &n[top..=top] };
+    match function {
+        "height" => of(n[4]).height(x).0,
+        "space" => of(0.0).height(x).0,
+        "handbook" => of(n[4]).handbook_height(x).0,
+        "grazing_k" => of(0.13).grazing_k(one(4), Metres(n[5])).unwrap().0,
+        "raise_a" => of(n[6]).raise_a(one(4), Metres(n[5])).unwrap().0,
+        "raise_both" => of(n[6]).raise_both(one(4), Metres(n[5])).unwrap().0,
+        _ => panic!("no such function: {function}"),
+    }
+}
+
+#[test]
+fn promises_are_kept_and_no_looser_than_measured() {
+    let mut worst: BTreeMap<&str, (f64, &str)> = BTreeMap::new();
+    let hunt = std::env::var("LINE_ROWS").map(|path| std::fs::read_to_string(path).unwrap());
+    for row in hunt.as_deref().unwrap_or(ROWS).lines() {
+        let cells: Vec<&str> = row.split('\t').collect();
+        let [function, arguments @ .., reference, residual, conditioning] = &cells[..] else { panic!("{row}") };
+        let n: Vec<f64> = arguments.iter().map(|text| text.parse().unwrap()).collect();
+        let [near, residual, conditioning] = [reference, residual, conditioning].map(|t| t.parse::<f64>().unwrap());
+        let ulp = f64::from_bits(near.abs().to_bits() >> 52 << 52) * f64::EPSILON;
+        let error = ((core(function, &n) - near) / ulp - residual).abs() / conditioning;
+        let entry = worst.entry(function).or_insert((0.0, row));
+        if error.is_nan() || error > entry.0 {
+            *entry = (error, row);
+        }
+    }
+    let mut wrong = vec![];
+    for &(function, promised) in PROMISES {
+        let (measured, row) = worst.remove(function).unwrap_or((f64::NAN, "no rows"));
+        println!("{function:12} promised {promised} ulp, measured {measured:.2} at {row}");
+        if measured.ceil() != promised {
+            wrong.push(format!("{function}: promised {promised} ulp, measured {measured:.2}"));
+        }
+    }
+    assert!(wrong.is_empty(), "{wrong:#?}");
+    assert!(worst.is_empty(), "rows without a promise: {:?}", worst.keys());
+}
