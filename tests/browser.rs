@@ -70,14 +70,15 @@ impl Stage<'_> {
         self.browser.wait("document.documentElement.dataset.ready")
     }
 
-    /// What the decision in view says must be what the native code says.
+    /// Waits until the decision in view is what the native code says.
     pub fn decides(&self, id: &str, entry: &str) -> Result<Answer> {
         let answer = ask(id, entry).ok_or(format!("no question {id}"))?;
-        let shown = self
-            .browser
-            .js("return ['word', 'number', 'sentence'].map(id => document.getElementById(id).textContent)")?;
         let verdict = &answer.verdict;
-        same(shown, json!([verdict.word, verdict.number, verdict.sentence]))?;
+        let wanted = json!([verdict.word, verdict.number, verdict.sentence]);
+        let shown = "['word', 'number', 'sentence'].map((id) => document.getElementById(id).textContent)";
+        // A finger's tap takes effect a moment after the driver has done with it.
+        let wait = self.browser.wait(&format!("JSON.stringify({shown}) === JSON.stringify({wanted})"));
+        wait.or_else(|_| same(self.browser.js(&format!("return {shown}"))?, wanted))?;
         Ok(answer)
     }
 }

@@ -48,7 +48,7 @@ fn say_what_they_are(of: &str, fields: &[Field]) {
     for field in fields {
         let name = format!("{of} {}", field.name);
         assert!(!field.label.is_empty() && !field.help.is_empty() && !field.example.is_empty(), "{name}");
-        assert!(!(field.required && !field.default.is_empty()), "{name}: required and assumed at once");
+        assert!(!field.required || field.default.is_empty(), "{name}: required and assumed at once");
         match field.kind {
             Kind::Number { min, max, why, negative, .. } => {
                 assert!(min < max && !why.is_empty() && negative == (min < 0.0), "{name}");

@@ -36,8 +36,8 @@ pub fn distance(eye: Metres, k: Coefficient, r: Metres) -> Option<Metres> {
 /// How far the horizon is in a straight line from the eye: √(h² + 4R(R + h) sin²(s/2R)), two sides and the angle at the
 /// earth's centre.
 pub fn line(eye: Metres, k: Coefficient, r: Metres) -> Option<Metres> {
-    let half = libm::sin(distance(eye, k, r)?.0 / (2.0 * r.0));
-    Some(Metres(libm::hypot(eye.0, 2.0 * half * (r.0 * (r.0 + eye.0)).sqrt())))
+    let half = libm::sin(dip(eye, k, r)?.0 / (1.0 - k.0) / 2.0);
+    Some(Metres((eye.0 * eye.0 + 4.0 * half * half * (r.0 * (r.0 + eye.0))).sqrt()))
 }
 
 /// How far the water's edge at a shore lies below the horizontal, the shore being nearer than the horizon:

@@ -10,9 +10,11 @@
 pub mod air;
 pub mod constants;
 pub mod doubt;
+pub mod earth;
 pub mod horizon;
 pub mod limits;
 pub mod line;
+pub mod place;
 pub mod quantity;
 pub mod question;
 mod questions;

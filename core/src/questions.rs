@@ -1,9 +1,10 @@
 //! Every question, in the page's order.
 
+mod horizon;
 mod reading;
 mod sight;
 
 use crate::question::Question;
 
 /// All of them.
-pub const ALL: &[&Question] = &[&sight::QUESTION, &reading::QUESTION];
+pub const ALL: &[&Question] = &[&sight::QUESTION, &reading::QUESTION, &horizon::QUESTION];

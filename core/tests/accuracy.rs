@@ -5,6 +5,7 @@
 #![allow(clippy::unwrap_used, clippy::panic, clippy::indexing_slicing, reason = "a test may panic")]
 
 use farstaff::air::guide::{KRange, Sky, k};
+use farstaff::horizon;
 use farstaff::quantity::unit::{Quantity, Unit};
 use farstaff::quantity::{Coefficient, Metres, Tilt};
 use farstaff::ray::{combined, curvature, handbook_combined, refraction};
@@ -21,6 +22,15 @@ const PROMISES: &[(&str, f64)] = &[
     ("combined_steep", 7.0),
     ("refraction_steep", 7.0),
     ("handbook_combined", 3.0),
+    ("dip", 3.0),
+    ("horizon", 4.0),
+    ("visible_range", 4.0),
+    // Beside what an ulp of the distance, or of the horizon, makes of it: the conditioning of its rows.
+    ("hidden", 4.0),
+    ("hidden_steep", 4.0),
+    // A chain of a dozen roundings each, to be shown to four digits: fewer take series of their own.
+    ("horizon_line", 5.0),
+    ("dip_short", 6.0),
     ("reach", 2.0),
     ("imbalance", 3.0),
     ("ratio_to_si", 1.0),
@@ -52,6 +62,12 @@ fn core(function: &str, texts: &[&str]) -> Option<f64> {
         "combined" | "combined_steep" => combined(metres(0), Coefficient(n[1]), metres(2)).map(|m| m.0),
         "refraction" | "refraction_steep" => refraction(metres(0), Coefficient(n[1]), metres(2)).map(|m| m.0),
         "handbook_combined" => Some(handbook_combined(metres(0), Coefficient(n[1]), metres(2)).0),
+        "dip" => horizon::dip(metres(0), Coefficient(n[1]), metres(2)).map(|a| a.0),
+        "horizon" => horizon::distance(metres(0), Coefficient(n[1]), metres(2)).map(|m| m.0),
+        "horizon_line" => horizon::line(metres(0), Coefficient(n[1]), metres(2)).map(|m| m.0),
+        "dip_short" => horizon::dip_short(metres(0), metres(1), Coefficient(n[2]), metres(3)).map(|a| a.0),
+        "hidden" | "hidden_steep" => horizon::hidden(metres(0), metres(1), Coefficient(n[2]), metres(3)).map(|m| m.0),
+        "visible_range" => horizon::visible_range(metres(0), metres(1), Coefficient(n[2]), metres(3)).map(|m| m.0),
         "reach" => reach(metres(0), doubt(1), metres(5)).map(|m| m.0),
         "imbalance" => imbalance(metres(0), metres(1), doubt(2), n[6], metres(7)).map(|m| m.0),
         "guide_value" => Some(guide(texts[0], n[0]).value.0),

@@ -5,8 +5,9 @@
 
 use farstaff::air::guide::{KRange, Sky, k};
 use farstaff::constants::{COVERAGE, EARTH_RADIUS, RADIUS_SPREAD};
+use farstaff::horizon;
 use farstaff::quantity::number::{number, split};
-use farstaff::quantity::unit::{QUANTITIES, Quantity, System};
+use farstaff::quantity::unit::{ARC_MINUTE, QUANTITIES, Quantity, System};
 use farstaff::quantity::{Coefficient, Metres, Tilt};
 use farstaff::ray::{combined, curvature, handbook_combined};
 use farstaff::sight::{SightDoubt, imbalance, reach};
@@ -97,6 +98,13 @@ fn compute(what: &str, inputs: &Inputs, printed: f64) -> f64 {
         "handbook_refraction" => handbook_combined(s, Coefficient(0.0), r).0 - at(s),
         "corrected" => inputs.metres("a").0 - at(s),
         "corrected_difference" => (inputs.metres("a").0 - at(s)) - (inputs.metres("a2").0 - at(inputs.metres("s2"))),
+        "dip" => horizon::dip(inputs.metres("h"), k, r).unwrap().0,
+        "horizon" => horizon::distance(inputs.metres("h"), k, r).unwrap().0,
+        "horizon_line" => horizon::line(inputs.metres("h"), k, r).unwrap().0,
+        "dip_short" => horizon::dip_short(inputs.metres("h"), s, k, r).unwrap().0,
+        "hidden" => horizon::hidden(inputs.metres("h"), s, k, r).unwrap().0,
+        "visible_range" => horizon::visible_range(inputs.metres("h"), inputs.metres("H"), k, r).unwrap().0,
+        "nautical_k" => horizon::NAUTICAL_K.0,
         "reach" => reach(inputs.allowed(), inputs.doubt(), r).unwrap().0,
         "imbalance" => {
             let common = inputs.get("rho", Quantity::Refraction);
@@ -125,7 +133,7 @@ fn named(quantity: &str) -> Quantity {
 /// A quantity that has the unit of the output.
 fn quantity(what: &str, unit: &str) -> Quantity {
     match unit {
-        "m" | "km" | "ft" => Quantity::Distance,
+        "m" | "km" | "ft" | "NM" => Quantity::Distance,
         "mm" => Quantity::SmallLength,
         "k" => Quantity::Refraction,
         _ => named(what),
@@ -154,7 +162,7 @@ fn figures_of_others() {
             panic!("{line}")
         };
         assert!(!source.is_empty(), "{line}");
-        let output = quantity(what, unit).unit(unit).unwrap();
+        let output = if unit == "′" { ARC_MINUTE } else { quantity(what, unit).unit(unit).unwrap() };
         let expected: f64 = printed.parse().unwrap();
         let got = compute(what, &Inputs(inputs), output.to_si(expected).unwrap());
         let got = output.from_si(got).unwrap();

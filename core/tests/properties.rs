@@ -12,6 +12,9 @@ use farstaff::quantity::{Coefficient, Metres, Tilt};
 use farstaff::ray::{combined, curvature, handbook_combined, refraction};
 use farstaff::sight::{SightDoubt, imbalance, reach};
 
+#[path = "properties/horizon.rs"]
+mod horizons;
+
 const R: Metres = Metres(6_371_000.0);
 const SYSTEMS: [System; 3] = [System::Metric, System::Foot, System::SurveyFoot];
 

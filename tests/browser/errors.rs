@@ -84,6 +84,7 @@ const VISIT: &str = "const wrong = [];
             for (const event of ['input', 'focusout']) at.dispatchEvent(new Event(event, { bubbles: true }));
         };
         type(text);
+        await new Promise((done) => setTimeout(done));
         const here = at.closest('.field').querySelector('.error:not([hidden]) p')?.textContent;
         const summary = [...document.querySelectorAll('#problems li a')].map((each) => each.textContent);
         const words = document.getElementById('word').textContent;

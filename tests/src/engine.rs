@@ -11,6 +11,12 @@ use std::path::Path;
 use std::rc::Rc;
 use std::time::{Duration, Instant};
 
+/// Name by which WebDriver marks a handle of an element.
+const ELEMENT: &str = "element-6066-11e4-a52e-4f735466cecf";
+
+/// Longer than the halves of a double tap lie apart.
+const BETWEEN_TAPS: Duration = Duration::from_millis(400);
+
 /// How long anything may take that is waited for.
 const PATIENCE: Duration = Duration::from_secs(20);
 
@@ -161,26 +167,32 @@ impl Browser {
     /// Taps the middle of an element, as a finger does where the engine's driver has fingers. Like a finger it first
     /// moves the page until the element lies free: a driver alone leaves it under the bar at the top.
     pub fn tap(&self, css: &str) -> Result<()> {
-        let centre =
-            format!("document.querySelector({})?.scrollIntoView({{ block: 'center' }}); return 0;", json!(css));
-        self.js(&centre)?;
+        let ready = format!(
+            "document.querySelector({})?.scrollIntoView({{ block: 'center' }});
+            globalThis.tapped = false;
+            addEventListener('click', () => {{ globalThis.tapped = true; }}, {{ capture: true, once: true }}); return 0;",
+            json!(css)
+        );
+        self.js(&ready)?;
+        // Two quick taps on the same place of the screen would be a double tap.
+        std::thread::sleep(BETWEEN_TAPS);
+        let touch = |origin: Value| {
+            let moves = json!([
+                { "type": "pointerMove", "x": 0, "y": 0, "origin": origin },
+                { "type": "pointerDown", "button": 0 },
+                { "type": "pointerUp", "button": 0 },
+            ]);
+            let finger = json!({ "pointerType": "touch" });
+            json!({ "actions": [{ "type": "pointer", "id": "finger", "parameters": finger, "actions": moves }] })
+        };
         match self {
-            Chromium(session) | WebKit(session) => {
-                let id = session.element(css)?;
-                session.post(&format!("element/{id}/click"), json!({}))
-            }
-            Browser::Firefox(firefox) => {
-                let moves = json!([
-                    { "type": "pointerMove", "x": 0, "y": 0, "origin": firefox.element(css)? },
-                    { "type": "pointerDown", "button": 0 },
-                    { "type": "pointerUp", "button": 0 },
-                ]);
-                let finger = json!({ "pointerType": "touch" });
-                let action = json!({ "type": "pointer", "id": "finger", "parameters": finger, "actions": moves });
-                firefox.tab("input.performActions", json!({ "actions": [action] }))
-            }
-        }
-        .map(drop)
+            Chromium(session) => session.post("actions", touch(json!({ ELEMENT: session.element(css)? }))),
+            Browser::Firefox(firefox) => firefox.tab("input.performActions", touch(firefox.element(css)?)),
+            // Its driver has no fingers.
+            WebKit(session) => session.post(&format!("element/{}/click", session.element(css)?), json!({})),
+        }?;
+        // What a finger does takes effect a moment later. On a page that has been left by it nothing is known any more.
+        self.wait("globalThis.tapped !== false").map_err(|error| format!("the tap on {css} was no click: {error}"))
     }
 
     /// Types a text key by key, wherever the focus is.

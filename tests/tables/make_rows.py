@@ -13,7 +13,7 @@ import random
 import re
 import sys
 
-from mpmath import atan, cos, log, mp, mpf, nstr, pi, sin, sqrt, tan
+from mpmath import acos, atan, cos, log, mp, mpf, nstr, pi, sin, sqrt, tan
 
 mp.dps = 80
 COUNT = int(sys.argv[1]) if len(sys.argv) > 1 else 12
@@ -36,6 +36,17 @@ HARDEST = {
         (50817.28506361009, -19.534448386811004, 6371e3),
     ],
     "handbook": [(1.9806939533099286, -0.40313646571085704, 6375914.567234138)],
+    "horizon": [
+        (99.78631287279133, -0.0021119570268580542, 6357822.857500528),
+        (1093.8873055474176, 0.9868087985355586, 6342585.194367794),
+        (1709.6356411780837, -0.3160725844294233, 6371e3),
+    ],
+    "dip_short": [(6.835503905926548, 55.21417556390168, -0.8108515968069072, 6394548.530128381)],
+    "hidden": [
+        (1597.8421799679145, 141584.41609857656, -0.015776183012838216, 6359509.074106402),
+        (12.493583074006345, 818226.6040354739, -3.61851480587771, 6371e3),
+    ],
+    "visible_range": [(1093.8873055474176, 0.5303280542808574, 0.9868087985355586, 6342585.194367794)],
     "reach": [(0.005093488472614259, 0.0, 0.00018100589673072495, 2.9141550994973156e-05, 0.13288327284217172, 6371e3)],
     "imbalance": [
         (0.049669250331002834, 1.3210674589553446, 0.00018715073202861684, 0.0, 0.0, 0.0588299561849624,
@@ -147,6 +158,83 @@ def sights():
         combined(length(), coefficient(), radius())
         refraction(length(), coefficient(), radius())
         handbook(length(), coefficient(), radius())
+
+
+# --- the horizon ----------------------------------------------------------------------------------------------------
+
+HEIGHTS = (0.01, 10.0, 10_000.0)
+
+
+def horizon(h, k, r):
+    """Dip and arc of the line that grazes the surface; none where there is no such line."""
+    q = 1 - mpf(k)
+    dip = acos((1 + mpf(h) / mpf(r)) ** -q) if q > 0 else None
+    return None if dip is None or dip > q * pi else (dip, mpf(r) * dip / q)
+
+
+def horizons(h, k, r):
+    found = horizon(h, k, r)
+    emit("dip", (h, k, r), found and found[0])
+    emit("horizon", (h, k, r), found and found[1])
+    side = mpf(r) + mpf(h)
+    chord = found and sqrt(side**2 + mpf(r) ** 2 - 2 * side * mpf(r) * cos(found[1] / mpf(r)))
+    emit("horizon_line", (h, k, r), chord)
+
+
+def dip_short(h, s, k, r):
+    q, theta, up = 1 - mpf(k), mpf(s) / mpf(r), log(1 + mpf(h) / mpf(r))
+    if abs(q) * theta >= pi:
+        return emit("dip_short", (h, s, k, r), None)
+    if q == 0:
+        return emit("dip_short", (h, s, k, r), atan(up / theta))
+    # The eye's power of the radius and the shore's, as in the plane that makes all rays straight.
+    eye, turn = (1 + mpf(h) / mpf(r)) ** q, q * theta
+    rise = 1 - cos(turn) + (eye - 1)
+    tangent = rise / sin(turn)
+    # Above k = 1 the parts of the rise have two signs, and the sine falls off towards pi.
+    emit("dip_short", (h, s, k, r), atan(tangent), max((1 - cos(turn) + abs(eye - 1)) / abs(rise), abs(turn / tan(turn))))
+
+
+def hidden(h, s, k, r):
+    found = horizon(h, k, r)
+    if found is None or mpf(s) <= found[1]:
+        return emit("hidden", (h, s, k, r), mpf(0))
+    ray = height(mpf(s) - found[1], k, r)
+    # What lies beyond the horizon is a difference: this many ulps are made by one of s, or of the horizon.
+    function = "hidden" + steep(mpf(s) - found[1], k, r)
+    emit(function, (h, s, k, r), ray and ray[0], ray and 2 * steepening(s, *ray))
+
+
+def visible_range(h, target, k, r):
+    legs = horizon(h, k, r), horizon(target, k, r)
+    emit("visible_range", (h, target, k, r), legs[0] and legs[1] and legs[0][1] + legs[1][1])
+
+
+def horizons_and_hidden():
+    for h in HEIGHTS:
+        for k in COEFFICIENTS:
+            horizons(h, k, 6371e3)
+            visible_range(h, 30.0, k, 6371e3)
+            dip_short(h, 1000.0, k, 6371e3)
+            hidden(h, 1e6, k, 6371e3)
+    for arguments in HARDEST["horizon"]:
+        horizons(*arguments)
+    for arguments in HARDEST["dip_short"]:
+        dip_short(*arguments)
+    for arguments in HARDEST["hidden"]:
+        hidden(*arguments)
+    for arguments in HARDEST["visible_range"]:
+        visible_range(*arguments)
+    for _ in range(2 * COUNT):
+        h, k, r = spread(0.01, 10_000.0), coefficient(), radius()
+        horizons(h, k, r)
+        visible_range(h, spread(0.01, 10_000.0), k, r)
+        dip_short(h, spread(1.0, 1e6), k, r)
+        hidden(h, spread(1.0, 1e6), k, r)
+        found = horizon(h, k, r)
+        if found:  # just beyond the horizon, and well beyond
+            hidden(h, float(found[1] * (1 + mpf(spread(1e-9, 10)))), k, r)
+            dip_short(h, float(found[1] * RNG.random()), k, r)
 
 
 # --- how far, how unequal -------------------------------------------------------------------------------------------
@@ -289,3 +377,4 @@ sights()
 doubts()
 units()
 guide()
+horizons_and_hidden()  # last, so that its random rows do not change those above

@@ -173,10 +173,13 @@ function left(name) {
     document.addEventListener("click", () => left(name), { once: true });
     return;
   }
-  visited.add(name);
-  step = "";
-  adopt(name);
-  refresh();
+  // a finger's press is over before focus moves, and its click follows in the same task
+  setTimeout(() => {
+    visited.add(name);
+    step = "";
+    adopt(name);
+    refresh();
+  });
 }
 
 /** Opens what the address says. */

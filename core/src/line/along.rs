@@ -20,6 +20,8 @@ pub type Air<'a> = &'a dyn Fn(Metres) -> KRange;
 
 /// Pieces of the line at least.
 const PIECES: u32 = 256;
+/// So near to an end, as a share of the line, its limit is taken: 1e-6 of k off, where the quotient loses more.
+const END: f64 = 1e-6;
 /// Rounds at most, and the shift of the line in the last one.
 const ROUNDS: u32 = 200;
 const SETTLED: f64 = 1e-4;
@@ -122,10 +124,10 @@ impl Along {
     fn mean(&self, x: f64, which: usize) -> f64 {
         let Some(last) = self.nodes.last() else { return f64::NAN };
         let (once, all) = (pick(&last.once, which), pick(&last.twice, which));
-        if x <= 0.0 {
+        if x <= END * self.s {
             return 2.0 * all / (self.s * self.s);
         }
-        if x >= self.s {
+        if x >= self.s - END * self.s {
             return 2.0 * (once - all / self.s) / self.s;
         }
         let behind = self.nodes.partition_point(|node| node.x <= x);

@@ -24,18 +24,21 @@ type Point = (f64, f64);
 impl Line {
     /// The k at which the least clearance is `wanted`: the line clears by it where k is greater.
     ///
-    /// Greatest over the points of k + (wanted − clearance)·2R/(x(s − x)), which is exact for the parabola; repeated with
-    /// the exact clearance until it stands, which takes four or five rounds. `None` without points or where the air that it
-    /// takes lies outside |1 − k|·s/R ≤ 1. Good to a few ulps of the heights times 2R/(x(s − x)). Source: [`Line::height`].
+    /// Greatest over the points of k + (wanted − clearance)·2R/(x(s − x))·cos² β, β the slope from station to station; exact
+    /// for the parabola of a level line, repeated with the exact clearance until it stands, in four or five rounds. `None` without points, and where the air that it
+    /// takes lies outside |1 − k|·s/R ≤ 1 or is too wild for the rounds to settle (k of thousands). Good to a few ulps of the heights times 2R/(x(s − x)). Source: [`Line::height`].
     pub fn grazing_k(&self, ground: Profile, wanted: Metres) -> Option<Coefficient> {
+        let slope = (self.b - self.a) / self.s;
         let needed = |line: &Line, height: &dyn Fn(f64) -> f64| {
             let points = ground.points().filter(|&(_, x, top)| line.holds(x) && top.is_finite());
-            points.map(|(_, x, top)| (top + wanted.0 - height(x)) / line.lever(x)).fold(f64::NEG_INFINITY, f64::max)
+            let lacking = points.map(|(_, x, top)| (top + wanted.0 - height(x), line.lever(x) * (1.0 + slope * slope)));
+            let steps = lacking.map(|(height, lever)| Step { by: height / lever, height });
+            steps.max_by(|one, other| one.by.total_cmp(&other.by))
         };
-        let start = self.k + needed(self, &|x| self.handbook_height(Metres(x)).0);
+        let start = self.k + needed(self, &|x| self.handbook_height(Metres(x)).0)?.by;
         let step = |k: f64| {
             let line = self.in_air(Coefficient(k)).filter(|line| line.q.abs() * (line.s / line.r) <= 1.0)?;
-            Some(needed(&line, &|x| line.at(x)))
+            needed(&line, &|x| line.at(x))
         };
         settled(start, step).map(Coefficient)
     }
@@ -61,7 +64,8 @@ impl Line {
         let short = self.short_of(ground, wanted);
         let step = |raise: f64| {
             let line = self.raised(Metres(raise), Metres(raise))?;
-            Some(short.iter().map(|&(x, height)| height - line.at(x)).fold(f64::NEG_INFINITY, f64::max))
+            let lacking = short.iter().map(|&(x, height)| height - line.at(x)).max_by(f64::total_cmp)?;
+            Some(Step { by: lacking, height: lacking })
         };
         if short.is_empty() { Some(Metres(0.0)) } else { settled(0.0, step).map(Metres) }
     }
@@ -121,16 +125,25 @@ impl Line {
     }
 }
 
-/// Adds to `value` what `lacking` says until that no longer shrinks; `None` where it does not come down to rounding.
-fn settled(mut value: f64, lacking: impl Fn(f64) -> Option<f64>) -> Option<f64> {
+/// What is to be added, and the height that is lacking.
+struct Step {
+    by: f64,
+    height: f64,
+}
+
+/// A nanometre: above the rounding of heights, below what anything else leaves open.
+const CLOSE: f64 = 1e-9;
+
+/// Adds to `value` what `lacking` says until that no longer shrinks; `None` where the height does not come [`CLOSE`].
+fn settled(mut value: f64, lacking: impl Fn(f64) -> Option<Step>) -> Option<f64> {
     let mut before = f64::INFINITY;
     loop {
-        let step = lacking(value).filter(|step| step.is_finite())?;
-        if step.abs() >= before / 2.0 || step == 0.0 {
-            // OK as a bound: rounds shrink what is lacking tenfold and more, so that the last ones are rounding alone.
-            return (step.abs() <= 1e-9 * value.abs().max(1.0)).then_some(value);
+        let step = lacking(value).filter(|step| step.by.is_finite())?;
+        // OK as an end: what is lacking is halved each time or this is the last.
+        if step.by.abs() >= before / 2.0 || step.by == 0.0 {
+            return (step.height.abs() <= CLOSE).then_some(value);
         }
-        value += step;
-        before = step.abs();
+        value += step.by;
+        before = step.by.abs();
     }
 }

@@ -14,7 +14,7 @@ pub struct Shown {
 impl std::fmt::Display for Shown {
     fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
         // A no-break space: number and unit are one word.
-        let gap = if self.unit.is_empty() || self.unit.starts_with(['″', '°']) { "" } else { "\u{a0}" };
+        let gap = if self.unit.is_empty() || self.unit.starts_with(['″', '′', '°']) { "" } else { "\u{a0}" };
         write!(f, "{}{gap}{}", self.text, self.unit)
     }
 }
@@ -104,6 +104,10 @@ impl Show {
     pub fn height(self, si: f64) -> Shown {
         let unit = Quantity::Height.usual(self.0);
         Shown { text: places(in_unit(si, &unit), if unit.symbol == "m" { 4 } else { 3 }), unit: unit.symbol }
+    }
+    /// A length in metres or feet to two significant digits of `grain`.
+    pub fn metres(self, si: f64, grain: f64) -> Shown {
+        self.small_in(&Quantity::Height.usual(self.0), si, grain.abs().max(0.001))
     }
     /// A height in words: as many digits as it has, up to the centimetre or the hundredth of a foot.
     pub fn height_words(self, si: f64) -> Shown {

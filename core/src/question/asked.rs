@@ -3,6 +3,7 @@
 mod cell;
 mod echo;
 mod entered;
+pub mod gpx;
 mod table;
 
 use super::answer::{Fix, Level, Note, Problem, Read};

@@ -129,21 +129,25 @@ pub fn sky_words(sky: Sky) -> &'static str {
 /// The k in force under `sky`: as entered, else by the guide.
 pub fn air(asked: &Asked, sky: Sky) -> AirInForce {
     let height = asked.must(&LINE_HEIGHT);
-    let guide = guide::k(Metres(height), sky);
+    let at = asked.show().height_words(height);
+    let words = format!("our guide for a line {at} over the ground {}", sky_words(sky));
+    in_force(asked, guide::k(Metres(height), sky), &words)
+}
+
+/// The k in force: as entered, else by a rule that `words` name.
+pub fn in_force(asked: &Asked, rule: KRange, words: &str) -> AirInForce {
     let given = asked.number(&K);
-    let value = given.unwrap_or(guide.value.0);
+    let value = given.unwrap_or(rule.value.0);
     let (below, above) = match asked.number(&K_DOUBT) {
         Some(half) => (half, half),
-        None => (guide.value.0 - guide.low.0, guide.high.0 - guide.value.0),
+        None => (rule.value.0 - rule.low.0, rule.high.0 - rule.value.0),
     };
     let k = KRange { value: Coefficient(value), low: Coefficient(value - below), high: Coefficient(value + above) };
-    let at = asked.show().height_words(height);
-    let guide_words = format!("our guide for a line {at} over the ground {}", sky_words(sky));
     let source = match (given, asked.number(&K_DOUBT)) {
         (Some(_), Some(_)) => "as entered".to_owned(),
-        (Some(_), None) => format!("as entered, its doubt from {guide_words}"),
-        (None, Some(_)) => format!("from {guide_words}, its doubt as entered"),
-        (None, None) => format!("from {guide_words}"),
+        (Some(_), None) => format!("as entered, its doubt from {words}"),
+        (None, Some(_)) => format!("from {words}, its doubt as entered"),
+        (None, None) => format!("from {words}"),
     };
     AirInForce { k, source }
 }

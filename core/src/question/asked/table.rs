@@ -1,6 +1,7 @@
 //! A table: what a person types row by row, or pastes whole from a spreadsheet or a file of separated values.
 
 use super::cell::{What, lower, missing, take};
+use super::gpx;
 use crate::quantity::unit::System;
 use crate::question::answer::{Cell, Fix, Problem};
 use crate::question::field::{Field, Kind};
@@ -71,9 +72,15 @@ pub fn read(
 ) -> Table {
     let mut units: Vec<String> = columns.iter().map(|c| unit_of(c, system, &picked(c))).collect();
     let mut notes = vec![];
-    let mut lines = split(text, columns.len(), &mut notes);
-    headings(&mut lines, columns, &mut units, &mut notes);
     let Kind::Table { row, most, why, .. } = field.kind else { return empty(units) };
+    let file = gpx::looks_like(text).then(|| gpx::read(text, columns, most)).transpose();
+    let file = match file {
+        Ok(file) => file,
+        Err(message) => return refused(field, units, text, message),
+    };
+    let mut lines = split(file.as_ref().map_or(text, |file| &file.text), columns.len(), &mut notes);
+    headings(&mut lines, columns, &mut units, &mut notes);
+    notes = file.map_or(notes, |file| file.notes);
     let mut table = Table { rows: vec![], text: String::new(), units, echo: String::new(), problems: vec![], notes };
     if lines.len() > most {
         let message = format!("{} may have {most} rows at most: {why}. It has {}.", field.label, lines.len());
@@ -92,6 +99,11 @@ pub fn read(
             table.rows.push(row);
         }
     }
+    // Without a tab anywhere it would be read by other separators the next time.
+    if !table.text.is_empty() && !table.text.contains('\t') {
+        let end = table.text.find('\n').unwrap_or(table.text.len());
+        table.text.insert(end, '\t');
+    }
     if table.problems.len() > TOLD {
         let more = table.problems.len() - TOLD;
         table.problems.truncate(TOLD);
@@ -104,6 +116,12 @@ pub fn read(
         table.echo.push_str(&format!(", {struck} struck"));
     }
     table
+}
+
+/// A text that is no table stays as it was entered.
+fn refused(field: &'static Field, units: Vec<String>, text: &str, message: String) -> Table {
+    let problems = vec![Problem { field: field.name, cell: None, message, fixes: vec![] }];
+    Table { text: text.to_owned(), problems, ..empty(units) }
 }
 
 fn empty(units: Vec<String>) -> Table {
@@ -179,7 +197,7 @@ fn unit_of(column: &Field, system: System, picked: &str) -> String {
 /// Lines of cells, whatever separates them: tabs, else semicolons, else commas, else spaces.
 fn split(text: &str, columns: usize, notes: &mut Vec<String>) -> Vec<Vec<String>> {
     let text = text.replace("\r\n", "\n").replace('\r', "\n");
-    let text = text.trim_end().trim_start_matches('\n');
+    let text = text.trim_end_matches(['\n', ' ']).trim_start_matches('\n');
     if text.is_empty() {
         return vec![];
     }
@@ -194,7 +212,12 @@ fn split(text: &str, columns: usize, notes: &mut Vec<String>) -> Vec<Vec<String>
     if !name.is_empty() {
         notes.push(format!("The cells were read as separated by {name}."));
     }
-    text.lines().map(|line| cells(line, separator)).collect()
+    let mut lines: Vec<Vec<String>> = text.lines().map(|line| cells(line, separator)).collect();
+    while lines.last().is_some_and(Vec::is_empty) {
+        lines.pop();
+    }
+    let empty = lines.iter().take_while(|line| line.is_empty()).count();
+    lines.split_off(empty)
 }
 
 /// The cells of a line. One in double quotes may hold the separator, and a quote written twice (RFC 4180).
@@ -231,43 +254,36 @@ fn without_empty_end(mut cells: Vec<String>) -> Vec<String> {
     cells
 }
 
-/// Takes a first line of headings off; where they name columns, puts the cells in their order and takes their units.
+/// Takes a first line off that names columns, puts the cells in their order and takes their units. A first line of other
+/// words stays a row: what is wrong with it is then said at its cells.
 fn headings(lines: &mut Vec<Vec<String>>, columns: &[Field], units: &mut [String], notes: &mut Vec<String>) {
-    let Some(first) = lines.first() else { return };
-    let words = |c: &String| {
-        c.chars().any(|c| c.is_ascii_alphabetic() || !c.is_ascii())
-            && !c.starts_with(|c: char| c.is_ascii_digit() || c == STRUCK)
-    };
-    if first.len() < 2 || !first.iter().all(words) || !columns.iter().any(|c| matches!(c.kind, Kind::Number { .. })) {
+    let names = |line: &Vec<String>| line.iter().map(|heading| named(heading, columns)).collect::<Option<Vec<usize>>>();
+    let Some((first, order)) = lines.first().filter(|l| l.len() > 1).and_then(|l| Some((l.clone(), names(l)?))) else {
         return;
+    };
+    // What is left must begin with a row, or it would be taken for headings when it is read again.
+    while lines.first().is_some_and(|line| line.is_empty() || (line.len() > 1 && names(line).is_some())) {
+        lines.remove(0);
     }
-    let first = lines.remove(0);
-    let order: Vec<Option<usize>> = first.iter().map(|heading| named(heading, columns)).collect();
-    if order.iter().all(Option::is_some) {
-        for (heading, at) in first.iter().zip(order.iter().flatten()) {
-            let unit = heading.rsplit([' ', '(', '[', ',']).next().map(|u| u.trim_end_matches([')', ']']));
-            if let (Some(Kind::Number { quantity, .. }), Some(slot)) =
-                (columns.get(*at).map(|c| c.kind), units.get_mut(*at))
-                && let Some(unit) = unit.and_then(|u| quantity.unit(u))
-            {
-                *slot = unit.symbol.to_owned();
+    for (heading, at) in first.iter().zip(&order) {
+        let unit = heading.rsplit([' ', '(', '[', ',']).next().map(|u| u.trim_end_matches([')', ']']));
+        if let (Some(Kind::Number { quantity, .. }), Some(slot)) =
+            (columns.get(*at).map(|c| c.kind), units.get_mut(*at))
+            && let Some(unit) = unit.and_then(|u| quantity.unit(u))
+        {
+            *slot = unit.symbol.to_owned();
+        }
+    }
+    for line in lines.iter_mut() {
+        let mut placed = vec![String::new(); columns.len()];
+        for (cell, at) in line.iter().zip(&order) {
+            if let Some(slot) = placed.get_mut(*at) {
+                slot.clone_from(cell);
             }
         }
-        for line in lines.iter_mut() {
-            let mut placed = vec![String::new(); columns.len()];
-            for (cell, at) in line.iter().zip(order.iter().flatten()) {
-                if let Some(slot) = placed.get_mut(*at) {
-                    slot.clone_from(cell);
-                }
-            }
-            *line = without_empty_end(placed);
-        }
-        notes.push("The first line was read as headings.".to_owned());
-    } else {
-        notes.push(
-            "The first line looks like headings and was left out; the columns were read in their order.".to_owned(),
-        );
+        *line = without_empty_end(placed);
     }
+    notes.push("The first line was read as headings.".to_owned());
 }
 
 /// The column a heading names: by its own name or label, whatever follows in brackets.

@@ -165,7 +165,7 @@ impl Case {
             (true, true) => format!("from {low} to {high}"),
             (true, false) => format!("≥ {low}"),
             (false, true) => format!("≤ {high}"),
-            (false, false) => "none".to_owned(),
+            (false, false) => "whatever the air".to_owned(),
         };
         let shown = match what {
             _ if s.value.is_finite() => Shown { text: text(s.value), unit: unit.symbol },
@@ -173,7 +173,8 @@ impl Case {
             What::Range => Shown { text: "any distance".to_owned(), unit: "" },
             _ => Shown { text: "none".to_owned(), unit: "" },
         };
-        (shown, Shown { text: range, unit: unit.symbol })
+        let bounded = s.low.is_finite() || s.high.is_finite();
+        (shown, Shown { text: range, unit: if bounded { unit.symbol } else { "" } })
     }
 
     /// The value at one k as it is shown.

@@ -13,14 +13,16 @@ pub fn decide(case: &Case, answer: &mut Answer) {
     let hidden = case.spread(What::Hidden, k);
     let state = case.state(k);
     let (word, what, why) = match state {
-        Some(State::Within) if hidden.is_some_and(|h| h.high == 0.0) => ("Seen", None, "All of it is this side. "),
-        Some(State::Within) => ("Partly hidden", Some(What::Hidden), "Its top is seen. "),
-        Some(State::Beyond) => ("Hidden", Some(What::Hidden), "Its top is below the horizon. "),
-        Some(_) => ("Depends on the air", None, "What the air does decides whether its top is seen. "),
+        Some(State::Within) if hidden.is_some_and(|h| h.high == 0.0) => {
+            ("Seen", None, "All of it is above the horizon.")
+        }
+        Some(State::Within) => ("Partly hidden", Some(What::Hidden), "Its top is seen."),
+        Some(State::Beyond) => ("Hidden", Some(What::Hidden), "Its top is below the horizon."),
+        Some(_) => ("Depends on the air", None, "The air decides whether its top is seen."),
         None if hidden.is_some() => ("Hidden below", Some(What::Hidden), ""),
         None if case.target.is_some() => ("Raised at", Some(What::Range), ""),
         None if k.value.0 < 1.0 => ("Horizon at", Some(What::Horizon), ""),
-        None => ("No horizon", None, "The line bends with the earth or more. "),
+        None => ("No horizon", None, "The line bends as much as the earth or more."),
     };
     let verdict = &mut answer.verdict;
     verdict.word = word;
@@ -30,7 +32,8 @@ pub fn decide(case: &Case, answer: &mut Answer) {
     for each in [What::Hidden, What::Range, What::Horizon] {
         let Some(spread) = case.spread(each, k) else { continue };
         let (shown, range) = case.said(each, spread);
-        verdict.sentence.push_str(&format!("{}: {shown} ({range}). ", each.promise().label));
+        let gap = if verdict.sentence.is_empty() { "" } else { " " };
+        verdict.sentence.push_str(&format!("{gap}{}: {shown}, {range}.", each.promise().label));
         if what == Some(each) {
             verdict.number = shown.to_string();
         }
@@ -80,9 +83,11 @@ pub fn airs(case: &Case) -> Table {
     };
     let airs = [(case.k_given, "k as entered", case.air.k), (true, "by day", case.day), (true, "by night", case.night)];
     for (_, name, k) in airs.into_iter().filter(|air| air.0) {
-        add(name, "", k.value);
-        add(name, ", least k", k.low);
-        add(name, ", greatest k", k.high);
+        for (end, at) in [("", k.value), (", least k", k.low), (", greatest k", k.high)] {
+            if end.is_empty() || at != k.value {
+                add(name, end, at);
+            }
+        }
     }
     add("no air", "", Coefficient(0.0));
     for what in asked {
