@@ -116,7 +116,7 @@ fn text(dice: &mut Dice, question: &Question, field: usize) -> String {
         }
         3 => match field.kind {
             Kind::Number { quantity, .. } => {
-                let number = (dice.roll(2_000_001) as f64 - 1e6) * 10f64.powi(dice.roll(12) as i32 - 9);
+                let number = (dice.roll(2_000_001) as f64 - 1e6) * libm::pow(10.0, dice.roll(12) as f64 - 9.0);
                 let units = quantity.info().units;
                 format!("{number} {}", units[dice.roll(units.len())].symbol)
             }

@@ -1,6 +1,9 @@
 //! How long the least clearance over a profile takes, beside one pass of plain sums over the same two arrays:
-//! `cargo bench -p farstaff --bench line`. The same points in NumPy and in plain JavaScript: tests/tables/bench_line.py,
-//! tests/bench_line.mjs. Times depend on the machine and on what else it does: they are printed and judged by people.
+//! `cargo bench -p farstaff --bench line`. The same points in NumPy and in plain JavaScript:
+//! tests/tables/bench_line.py, tests/bench_line.mjs. Times depend on the machine and on what else it does: they are
+//! printed and judged by people.
+
+#![allow(clippy::expect_used, reason = "a benchmark may panic")]
 
 use farstaff::line::Line;
 use farstaff::line::profile::Profile;
@@ -11,7 +14,8 @@ use std::time::Instant;
 const LENGTH: f64 = 50e3;
 const ROUNDS: u32 = 25;
 
-/// A hill under a line of 50 km, three metres rough; the noise is the linear congruence of Numerical Recipes (from memory).
+/// A hill under a line of 50 km, three metres rough; the noise is the linear congruence of Numerical Recipes (from
+/// memory).
 fn hill(n: u32) -> (Vec<f64>, Vec<f64>) {
     let mut state = 1_u32;
     (0..n)

@@ -1,9 +1,9 @@
 //! The line of sight between two stations, and what stands under it.
 //!
-//! The model is that of [`crate::ray`]: refractive index ∝ r^(−k), any real k. There r^q · cos β is kept along a ray and
-//! β grows by qθ (β elevation, q = 1 − k, θ = x/R), so that r^(−q) is a plain sine of qθ: the ray through two points is
-//! known everywhere by two sines, as a straight line is in polar coordinates. This is what the effective radius R/q of
-//! the handbooks stands for, made exact.
+//! The model is that of [`crate::ray`]: refractive index ∝ r^(−k), any real k. There r^q · cos β is kept along a ray
+//! and β grows by qθ (β elevation, q = 1 − k, θ = x/R), so that r^(−q) is a plain sine of qθ: the ray through two
+//! points is known everywhere by two sines, as a straight line is in polar coordinates. This is what the effective
+//! radius R/q of the handbooks stands for, made exact.
 //!
 //! - [`profile`]: clearance over points, the least of a million of them in one pass.
 //! - [`remedy`]: the k that grazes, how far to raise which end, the cheapest pair of stands.
@@ -38,8 +38,8 @@ pub struct Line {
 impl Line {
     /// The ray between heights `a` and `b` over the level surface of radius `r`, `s` apart along it.
     ///
-    /// `None` where no ray joins them (|1 − k|·s/R ≥ π), where a station lies at the earth's centre, or `s` is not above
-    /// nought: for lines below 200 km that takes |1 − k| of a hundred.
+    /// `None` where no ray joins them (|1 − k|·s/R ≥ π), where a station lies at the earth's centre, or `s` is not
+    /// above nought: for lines below 200 km that takes |1 − k| of a hundred.
     pub fn new(a: Metres, b: Metres, s: Metres, k: Coefficient, r: Metres) -> Option<Line> {
         let q = 1.0 - k.0;
         let turn = q * (s.0 / r.0);
@@ -70,13 +70,13 @@ impl Line {
 
     /// Height of the line over the level surface at arc `x` from the first station, 0 to s.
     ///
-    /// With u(h) = (1 + h/R)^(−q) − 1: u = [u(a) sin q(Θ−θ) + u(b) sin qθ]/sin qΘ + 2 sin(qθ/2) sin(q(Θ−θ)/2)/cos(qΘ/2),
-    /// of which the last term is the bulge of the earth and none cancels for stations above the surface; then
-    /// h = R·expm1(−log1p(u)/q). At q = 0 log1p(h/R) runs straight. Metres. Good to a few ulps of what is added
-    /// (core/tests/line.rs counts them): 1e-13 m at 50 km. At k = 0 it is the straight line in space. On the ellipsoid R
-    /// is the radius in the azimuth of the line. Beyond about 50 km k falls with height, by metres at 200 km: not in this
-    /// form. Source: Bouguer's n·r·cos β = constant, integrated here between two points; 60-digit rows made from the
-    /// launching form of the same integral.
+    /// With u(h) = (1 + h/R)^(−q) − 1: u = [u(a) sin q(Θ−θ) + u(b) sin qθ]/sin qΘ + 2 sin(qθ/2)
+    /// sin(q(Θ−θ)/2)/cos(qΘ/2), of which the last term is the bulge of the earth and none cancels for stations above
+    /// the surface; then h = R·expm1(−log1p(u)/q). At q = 0 log1p(h/R) runs straight. Metres. Good to a few ulps of
+    /// what is added (core/tests/line counts them): 1e-13 m at 50 km. At k = 0 it is the straight line in space. On the
+    /// ellipsoid R is the radius in the azimuth of the line. Beyond about 50 km k falls with height, by metres at 200
+    /// km: not in this form. Source: Bouguer's n·r·cos β = constant, integrated here between two points; 100-digit rows
+    /// made from the launching form of the same integral.
     pub fn height(&self, x: Metres) -> Metres {
         Metres(self.at(x.0))
     }
@@ -97,8 +97,8 @@ impl Line {
 
     /// The handbook's parabola for [`Self::height`]: a + (b − a)·x/s − (1 − k)·x(s − x)/2R, metres.
     ///
-    /// Between stations of equal height it is 0.1 µm off at 10 km and 0.06 mm at 50 km (k 0); with a difference of 1000 m
-    /// in 50 km, 43 mm. Source: US Army Engineer School, EN0593 Surveying III (2001), para 2-53.
+    /// Between stations of equal height it is 0.1 µm off at 10 km and 0.06 mm at 50 km (k 0); with a difference of 1000
+    /// m in 50 km, 43 mm. Source: US Army Engineer School, EN0593 Surveying III (2001), para 2-53.
     pub fn handbook_height(&self, x: Metres) -> Metres {
         Metres(self.a + (self.b - self.a) * (x.0 / self.s) - self.q * self.lever(x.0))
     }

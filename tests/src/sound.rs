@@ -47,6 +47,9 @@ pub fn faults(question: &Question, answer: &Answer) -> Vec<String> {
     if let Some(figure) = &answer.figure {
         check(answer.tables.iter().any(|t| t.name == figure.table), &|| "a figure without its table".to_owned());
         check(!figure.title.is_empty() && !figure.description.is_empty(), &|| "a figure without words".to_owned());
+        check(figure.readings.iter().all(|r| (0.0..=1.0).contains(&r.at) && !r.text.is_empty()), &|| {
+            "a reading off the picture".to_owned()
+        });
         let ticks = |axis: &Axis| axis.ticks.iter().map(|t| t.at).collect::<Vec<_>>();
         let mut places = [ticks(&figure.x), ticks(&figure.y)].concat();
         check(figure.x.ticks.len() >= 3 && figure.y.ticks.len() >= 3, &|| "an axis without figures".to_owned());

@@ -55,4 +55,5 @@ for n in (1000, 10_000, 100_000, 1_000_000, 4_000_000):
     plain = microseconds(lambda: (at.sum(), top.sum()))
     took = microseconds(lambda: least(at, top))
     clearance, x = least(at, top)
-    print(f"{n:>9} {plain:>12.1f} {took:>12.1f} {took / plain:>6.2f} {took * 1e3 / n:>9.2f}  {clearance:.9f} m at {x:.3f} m")
+    columns = f"{n:>9} {plain:>12.1f} {took:>12.1f} {took / plain:>6.2f} {took * 1e3 / n:>9.2f}"
+    print(f"{columns}  {clearance:.9f} m at {x:.3f} m")

@@ -3,9 +3,10 @@
     python3 tests/tables/make_line_rows.py > core/tests/rows/line.tsv     # Needs mpmath; the rows are committed.
     python3 tests/tables/make_line_rows.py 5000 > /tmp/line_hunt.tsv      # 5000 random rows a function: hunts for worse
 
-Columns as in make_rows.py: function; arguments; reference, 25 digits; its residual in ulps; conditioning. The reference is
-not the two-point form of core/ but the launching form: the elevation at the first station is found, then the ray followed.
-`space` rows know nothing of rays: a straight line between two points in the plane through the earth's centre (k = 0).
+Columns as in make_rows.py: function; arguments; reference, 25 digits; its residual in ulps; conditioning. The
+reference is not the two-point form of core/ but the launching form: the elevation at the first station is found, then
+the ray followed. `space` rows know nothing of rays: a straight line between two points in the plane through the
+earth's centre (k = 0).
 Conditioning: how many times larger than the result the sum of the terms is that core/ must add, ends and bulge apart.
 """
 import random
@@ -19,12 +20,23 @@ RNG = random.Random(20261203)
 
 # The hardest arguments that some ten thousand random ones brought up, so that a promise meets them.
 HARDEST = {
-    "height": [(414.3454037561471, 652.034175272144, 2665.553966714977, 0.018689641152543814, -9.351383852682721, 6371000.0)],
+    "height": [
+        (414.3454037561471, 652.034175272144, 2665.553966714977, 0.018689641152543814, -9.351383852682721, 6371000.0),
+    ],
     "space": [(65.05158945340126, 29.839275299111403, 250.04473247854435, 17.163052313895477, 6371000.0)],
     "handbook": [(1.6, 1.6, 27965.057425123043, 6010.654998105619, -0.6226754215518518, 6392597.946760185)],
-    "grazing_k": [(1.6, -24.37175252071122, 151006.68966633704, 75503.34483316852, -458.77863318481633, 0.14862998846962044, 6371000.0)],
-    "raise_a": [(1.6, 33.40336771672925, 2129.593696672974, 1275.5926167183798, 20.63227832841812, 0.6948254367249616, 0.0, 6371000.0)],
-    "raise_both": [(3.706795329613842, -3.728281095485649, 134.08544146645897, 67.04272073322949, -0.020725787960094746, 7.736768129877205, -27.163345969812752, 6360351.824017308)],
+    "grazing_k": [
+        (1.6, -24.37175252071122, 151006.68966633704, 75503.34483316852, -458.77863318481633, 0.14862998846962044,
+         6371e3),
+    ],
+    "raise_a": [
+        (1.6, 33.40336771672925, 2129.593696672974, 1275.5926167183798, 20.63227832841812, 0.6948254367249616, 0.0,
+         6371e3),
+    ],
+    "raise_both": [
+        (3.706795329613842, -3.728281095485649, 134.08544146645897, 67.04272073322949, -0.020725787960094746,
+         7.736768129877205, -27.163345969812752, 6360351.824017308),
+    ],
 }
 
 

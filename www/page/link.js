@@ -18,9 +18,9 @@ export function readLink(of, quantities, link) {
     const isUnit = field && field.name !== name;
     const list = kind?.type === "number"
       ? quantities.find((each) => each.name === kind.quantity)?.units.map((each) => each.symbol)
-      : kind?.options.map((each) => each.value);
+      : kind?.type === "choice" ? kind.options.map((each) => each.value) : undefined;
     const fits = field && !(name in known)
-      && (isUnit ? kind?.type === "number" && list?.includes(text) : kind?.type === "number" || list?.includes(text));
+      && (isUnit ? kind?.type === "number" && list?.includes(text) : kind?.type !== "choice" || list?.includes(text));
     if (fits) known[name] = text;
     else unknown += `\n${name}=${text}`;
   }

@@ -1,8 +1,9 @@
 //! k along a line that runs low, where the air changes with the height of the line over the ground.
 //!
-//! A shallow ray obeys h″ = (1 − k(x))/R with its two ends held: a string under the load k/R. What bends it at x is then
-//! the mean of k over the line weighted by Green's function of the string, G(x, t) = t(s − x)/s before x and x(s − t)/s
-//! behind, whose integral is x(s − x)/2: a k of its own for each x. The nearer to x, the more the air counts there.
+//! A shallow ray obeys h″ = (1 − k(x))/R with its two ends held: a string under the load k/R. What bends it at x is
+//! then the mean of k over the line weighted by Green's function of the string, G(x, t) = t(s − x)/s before x and x(s −
+//! t)/s behind, whose integral is x(s − x)/2: a k of its own for each x. The nearer to x, the more the air counts
+//! there.
 
 use super::profile::Profile;
 use crate::air::guide::KRange;
@@ -49,15 +50,15 @@ struct Node {
 impl Along {
     /// The line between heights `a` and `b`, `s` apart, over `ground`, in air whose k at a height over it is `air`.
     ///
-    /// The ground runs straight from point to point, level beyond the outermost. Where the line is blocked or runs lower
-    /// than `floor`, the air is that at `floor`: a line that is to be made clear will not run lower. The line starts at one k and
-    /// is drawn anew through the air that it meets, half of the way each round, less where that swings about, until it
-    /// is within 0.1 mm of the next. `None` where 200 rounds do not bring it there, or there is no ground: then one
-    /// number must do. Over hot ground several lines may join the same stations (mirage): this is the highest that the
-    /// rounds come to rest at. Heights by the parabola, which moves k by nothing that counts; k straight within pieces of
-    /// s/256 at most, cut at every point too: 1 % of k off where the line comes down to half a metre, 0.1 % above two.
-    /// Time grows with the number of points, times the rounds. Source: derived here; as seen from its end a line is bent
-    /// by k_eff = (2/s²)∫(s − x)k dx, which is the limit x → 0.
+    /// The ground runs straight from point to point, level beyond the outermost. Where the line is blocked or runs
+    /// lower than `floor`, the air is that at `floor`: a line that is to be made clear will not run lower. The line
+    /// starts at one k and is drawn anew through the air that it meets, half of the way each round, less where that
+    /// swings about, until it is within 0.1 mm of the next. `None` where 200 rounds do not bring it there, or there is
+    /// no ground: then one number must do. Over hot ground several lines may join the same stations (mirage): this is
+    /// the highest that the rounds come to rest at. Heights by the parabola, which moves k by nothing that counts; k
+    /// straight within pieces of s/256 at most, cut at every point too: 0.1 % of k off where the line comes down to
+    /// half a metre. Time grows with the number of points, times the rounds. Source: derived here; as seen from its end
+    /// a line is bent by k_eff = (2/s²)∫(s − x)k dx, which is the limit x → 0.
     pub fn new(ends: [Metres; 2], s: Metres, ground: Profile, floor: Metres, air: Air, r: Metres) -> Option<Along> {
         let mut along = Along { s: s.0, nodes: nodes(s.0, ground)?, low_share: 0.0 };
         let straight = |x: f64| ends[0].0 + (ends[1].0 - ends[0].0) * (x / s.0);

@@ -74,19 +74,22 @@ struct Margin {
 /// P = ∫φ(z) ∫φ(w) Π Φ((c + k(z) − √ρ·g·w)/√((1−ρ)g² + v²)) dw dz; c, g, v spare, ground, cover of the point in
 /// standard deviations (half-widths over [`COVERAGE`]), ρ = `common`, φ and Φ the normal density and distribution, and
 /// k(z) = sinks·z below nought, rises·z above: half of the chance lies to either side of the value of k, and z = ∓2 are
-/// the ends of its range, so that a lopsided range stays as it is. The line moves straight with k but for shares of 1e-3.
+/// the ends of its range, so that a lopsided range stays as it is. The line moves straight with k but for shares of
+/// 1e-3.
 ///
 /// Adaptive Simpson's rule, panels halved until steps are found; points that cannot matter are left out. Off by 1e-4 at
-/// most, mostly by 1e-5 (core/tests/line.rs holds it to sampling and to a plain sum). Model, not measurement: independent
-/// errors from row to row make the chance fall as rows are added, so that rows should be no denser than errors are alike.
+/// most, mostly by 1e-5 (core/tests/line holds it to sampling and to a plain sum). Model, not measurement: independent
+/// errors from row to row make the chance fall as rows are added, so that rows should be no denser than errors are
+/// alike. Time grows with the points that may matter: some tens of microseconds each of them.
 /// Source: conditioning on what is shared; the formula is ours.
 pub fn chance(points: &[Point], common: f64) -> f64 {
     let common = common.clamp(0.0, 1.0);
     let margins = worst_first(points.iter().map(|point| Margin::of(point, common)));
     let moved = margins.iter().any(|m| m.sinks > 0.0 || m.rises > 0.0);
     let shared = margins.iter().any(|m| m.shared > 0.0);
+    let table = Table::new();
     let given_air = |z: f64| {
-        let given_both = |w: f64| clears(&margins, z, w);
+        let given_both = |w: f64| clears(&margins, &table, z, w);
         if shared { expected(&given_both, PANEL.0) } else { given_both(0.0) }
     };
     if moved { expected(&given_air, PANEL.1).clamp(0.0, 1.0) } else { given_air(0.0).clamp(0.0, 1.0) }
@@ -128,13 +131,13 @@ fn worst_first(margins: impl Iterator<Item = Margin>) -> Vec<Margin> {
 }
 
 /// The chance that all clear, given the air and what the ground's errors share.
-fn clears(margins: &[Margin], z: f64, w: f64) -> f64 {
+fn clears(margins: &[Margin], table: &Table, z: f64, w: f64) -> f64 {
     let mut product = 1.0;
     for m in margins {
         let spare = m.spare + z * if z < 0.0 { m.sinks } else { m.rises } - w * m.shared;
         let ratio = ratio(spare, m.own);
         if ratio < FAR {
-            product *= normal(ratio);
+            product *= table.normal(ratio);
             if product < 1e-12 {
                 return 0.0;
             }
@@ -151,6 +154,41 @@ fn ratio(spare: f64, own: f64) -> f64 {
         f64::INFINITY
     } else {
         f64::NEG_INFINITY
+    }
+}
+
+/// Φ between −6 and 6 in pieces of the third degree that meet in value and slope: 3e-9 off, in a tenth of the time.
+struct Table(Vec<[f64; 4]>);
+
+/// Pieces to a standard deviation.
+const FINE: f64 = 32.0;
+
+impl Table {
+    fn new() -> Table {
+        let edges = (0..).map(|i| f64::from(i) / FINE - FAR).take_while(|x| *x < FAR);
+        let piece = |x: f64| {
+            let next = x + 1.0 / FINE;
+            let (from, to, start, end) = (normal(x), normal(next), density(x) / FINE, density(next) / FINE);
+            [from, start, 3.0 * (to - from) - 2.0 * start - end, start + end - 2.0 * (to - from)]
+        };
+        Table(edges.map(piece).collect())
+    }
+    fn normal(&self, x: f64) -> f64 {
+        let place = (x + FAR) * FINE;
+        // OK as an index: what is below the table, −∞ too, becomes 0 and is told apart.
+        match self.0.get(place as usize) {
+            Some([a, b, c, d]) if place >= 0.0 => {
+                let t = place - place.floor();
+                a + t * (b + t * (c + t * d))
+            }
+            _ => {
+                if x < 0.0 {
+                    0.0
+                } else {
+                    1.0
+                }
+            }
+        }
     }
 }
 

@@ -25,7 +25,8 @@ pub struct Least {
 }
 
 impl Least {
-    /// The lower of two; of equals the nearer to the first station, then the earlier row, so that order does not matter.
+    /// The lower of two; of equals the nearer to the first station, then the earlier row, so that order does not
+    /// matter.
     fn or(self, other: Least) -> Least {
         let key = |l: &Least| (l.clearance.0, l.at.0);
         let later = match key(&self).partial_cmp(&key(&other)) {
@@ -72,8 +73,8 @@ impl Line {
     /// Points at and outside the stations, and what is no number, are passed over; `None` where none is left. One pass
     /// over all points by the parabola that meets the line at both ends and in the middle, then the exact form where
     /// that leaves a doubt. The parabola leaves the line by E = max|h‴|·s³·√3/216 at most, and with β the elevation
-    /// h‴ = r tan β·(tan² β + (3q + 2q²)/cos² β)/R³: 1 µm at 10 km, 0.5 mm at 50 km (k 0, level). Source: remainder of the
-    /// interpolating polynomial; the derivative of [`Line::height`].
+    /// h‴ = r tan β·(tan² β + (3q + 2q²)/cos² β)/R³: 1 µm at 10 km, 0.5 mm at 50 km (k 0, level). Source: remainder of
+    /// the interpolating polynomial; the derivative of [`Line::height`].
     pub fn least(&self, ground: Profile) -> Option<Least> {
         let near = Parabola::of(self);
         let blocks = ground.len().div_ceil(BLOCK);
@@ -95,8 +96,8 @@ impl Line {
         least
     }
 
-    /// The least clearance once one row is cut down to `top`: less [`Self::least`], what the cutting wins. The next worst
-    /// point bounds it.
+    /// The least clearance once one row is cut down to `top`: less [`Self::least`], what the cutting wins. The next
+    /// worst point bounds it.
     pub fn least_when_cut(&self, ground: Profile, row: usize, top: Metres) -> Option<Least> {
         let after = row.saturating_add(1);
         let shifted = |l: Least| Least { row: l.row + after, ..l };
@@ -158,8 +159,8 @@ impl Parabola {
         let mut low = f64::INFINITY;
         for (&x, &top) in block.at_m.iter().zip(block.top_m) {
             let clearance = self.clearance(x, top);
-            // Seldom lower than all before, so that the processor guesses right and asks where x lies as seldom. A choice
-            // without a branch, side by side in vectors, is no faster natively and three times slower in wasm.
+            // Seldom lower than all before, so that the processor guesses right and asks where x lies as seldom. A
+            // choice without a branch, side by side in vectors, is no faster natively and three times slower in wasm.
             if clearance < low && (x - self.half).abs() < self.half {
                 low = clearance;
             }

@@ -24,9 +24,11 @@ type Point = (f64, f64);
 impl Line {
     /// The k at which the least clearance is `wanted`: the line clears by it where k is greater.
     ///
-    /// Greatest over the points of k + (wanted − clearance)·2R/(x(s − x))·cos² β, β the slope from station to station; exact
-    /// for the parabola of a level line, repeated with the exact clearance until it stands, in four or five rounds. `None` without points, and where the air that it
-    /// takes lies outside |1 − k|·s/R ≤ 1 or is too wild for the rounds to settle (k of thousands). Good to a few ulps of the heights times 2R/(x(s − x)). Source: [`Line::height`].
+    /// Greatest over the points of k + (wanted − clearance)·2R/(x(s − x))·cos² β, β the slope from station to station;
+    /// exact for the parabola of a level line, repeated with the exact clearance until it stands, in four or five
+    /// rounds. `None` without points, and where the air that it takes lies outside |1 − k|·s/R ≤ 1 or is too wild for
+    /// the rounds to settle (k of thousands). Good to a few ulps of the heights times 2R/(x(s − x)). Source:
+    /// [`Line::height`].
     pub fn grazing_k(&self, ground: Profile, wanted: Metres) -> Option<Coefficient> {
         let slope = (self.b - self.a) / self.s;
         let needed = |line: &Line, height: &dyn Fn(f64) -> f64| {
@@ -70,13 +72,14 @@ impl Line {
         if short.is_empty() { Some(Metres(0.0)) } else { settled(0.0, step).map(Metres) }
     }
 
-    /// The pair of stands that costs least, a metre of each costing `cost_a` and `cost_b`, for the line to clear by `wanted`.
+    /// The pair of stands that costs least, a metre of each costing `cost_a` and `cost_b`, for the line to clear by
+    /// `wanted`.
     ///
-    /// Stations and points together have an upper hull, edges being rays. The cheapest line lies on one of its edges, for
-    /// turning a line about a corner raises one end as it lowers the other, at a rate that is constant but for shares of
-    /// 1e-3 or so of the height: so much at most may the cost be off where two edges cost alike to that share. Each edge
-    /// is drawn out to both stations. `None` where none gets there. Source: linear programming in two unknowns, its
-    /// corners enumerated.
+    /// Stations and points together have an upper hull, edges being rays. The cheapest line lies on one of its edges,
+    /// for turning a line about a corner raises one end as it lowers the other, at a rate that is constant but for
+    /// shares of 1e-3 or so of the height: so much at most may the cost be off where two edges cost alike to that
+    /// share. Each edge is drawn out to both stations. `None` where none gets there. Source: linear programming in two
+    /// unknowns, its corners enumerated.
     pub fn cheapest(&self, ground: Profile, wanted: Metres, cost_a: f64, cost_b: f64) -> Option<Stands> {
         let hull = self.hull(self.short_of(ground, wanted));
         let edges = hull.iter().zip(hull.iter().skip(1));

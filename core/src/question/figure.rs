@@ -22,10 +22,23 @@ pub struct Figure {
     pub series: Vec<Series>,
     /// Single places, spans and limits.
     pub marks: Vec<Mark>,
+    /// What can be read off, from left to right, where a finger or an arrow key asks.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub readings: Vec<Reading>,
     /// Exaggeration or scale, in words.
     pub note: String,
     /// Name of the table with the same data.
     pub table: &'static str,
+}
+
+/// What a picture says at one place.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Reading {
+    /// Place, across.
+    pub at: f64,
+    /// Words with figures.
+    pub text: String,
 }
 
 /// An axis.

@@ -44,8 +44,8 @@ fn sampled(points: &[Point], common: f64, random: &mut Random, times: u32) -> f6
     f64::from(u32::try_from(clear.count()).unwrap()) / f64::from(times)
 }
 
-/// Gauss's rule of three points on strips of half a standard deviation, which meet at nought where k's sides do: nothing
-/// adapts, nothing is left out. Off by 1e-6 where nothing changes within less than a strip.
+/// Gauss's rule of three points on strips of half a standard deviation, which meet at nought where k's sides do:
+/// nothing adapts, nothing is left out. Off by 1e-6 where nothing changes within less than a strip.
 fn summed(points: &[Point], common: f64) -> f64 {
     let root = libm::sqrt(0.6);
     let density = |x: f64| libm::exp(-x * x / 2.0) / libm::sqrt(2.0 * std::f64::consts::PI);

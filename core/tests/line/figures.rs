@@ -52,7 +52,8 @@ fn stands_over_level_ground() {
 }
 
 /// Gillespie, A Treatise on Surveying, part 2, p. 22: 44 miles over the sea, equal stands 278 ft each, or 230 and 331
-/// (20 miles to where the line touches, and 24); ground at 200 ft, 478 each. Within a foot: the table there is whole feet.
+/// (20 miles to where the line touches, and 24); ground at 200 ft, 478 each. Within a foot: the table there is whole
+/// feet.
 #[test]
 fn stands_over_the_sea() {
     let s = 44.0 * MILE;
@@ -71,9 +72,9 @@ fn stands_over_the_sea() {
     near(unequal.b.0 / FOOT, 331.0, 1.0);
 }
 
-/// Published inputs, output recomputed: 75 km, 64 m and 96 m with a signal of 14 m, 0.0673 m a square kilometre; the line
-/// touches 34.57 km from A and 40.43 km from B, and takes 80.44 m at A, a stand of 16.44 m. The 3 m of clearance that the
-/// source asks for are not in its figures: heights there must count from the level that is to be cleared.
+/// Published inputs, output recomputed: 75 km, 64 m and 96 m with a signal of 14 m, 0.0673 m a square kilometre; the
+/// line touches 34.57 km from A and 40.43 km from B, and takes 80.44 m at A, a stand of 16.44 m. The 3 m of clearance
+/// that the source asks for are not in its figures: heights there must count from the level that is to be cleared.
 #[test]
 fn stand_on_a_long_line() {
     let s = 75_000.0;
@@ -93,9 +94,9 @@ fn stand_on_a_long_line() {
     near(seen.raise_a(ground.profile(), Metres(3.0)).unwrap().0, 0.0673 * rest * rest + 3.0 - 64.0, 0.02);
 }
 
-/// Heights along lines in 50-digit arithmetic: `parabola` to all digits; `circle` is a ray whose curvature is k/R at any
-/// height, in the model k/(R + h): with that, they are within 0.3 µm at 10 km, growing with the fourth power. At k = 0
-/// both are the straight line.
+/// Heights along lines in 50-digit arithmetic: `parabola` to all digits; `circle` is a ray whose curvature is k/R at
+/// any height, in the model k/(R + h): with that, they are within 0.3 µm at 10 km, growing with the fourth power. At k
+/// = 0 both are the straight line.
 #[test]
 fn heights_on_lines() {
     // a, b, s, x, k, parabola, circle.
@@ -131,8 +132,8 @@ fn how_far_the_handbook_is_off() {
     near(off(0.0, 1000.0, 50e3), 43e-3, 0.5e-3);
 }
 
-/// No air: the straight line between two points in space, met by the plumb line of the third. 0.1 mm at 50 km is asked for;
-/// coordinates of 6e6 m are themselves rounded to 1e-9 m.
+/// No air: the straight line between two points in space, met by the plumb line of the third. 0.1 mm at 50 km is asked
+/// for; coordinates of 6e6 m are themselves rounded to 1e-9 m.
 #[test]
 fn straight_through_coordinates_in_space() {
     let s = 50e3;

@@ -1,7 +1,8 @@
-//! A line over ground: held to 100-digit arithmetic, to figures of others, to sampling, and to what holds for every line.
+//! A line over ground: held to 100-digit arithmetic, to figures of others, to sampling, and to what holds for every
+//! line.
 //!
-//! The rows are made by `tests/tables/make_line_rows.py`, which says what its columns are. Tolerances are ulps of our own
-//! arithmetic, digits that a source prints, or errors that the function's own text states: each says which.
+//! The rows are made by `tests/tables/make_line_rows.py`, which says what its columns are. Tolerances are ulps of our
+//! own arithmetic, digits that a source prints, or errors that the function's own text states: each says which.
 #![allow(clippy::unwrap_used, clippy::panic, clippy::indexing_slicing, reason = "a test may panic")]
 
 mod air;

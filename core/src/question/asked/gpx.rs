@@ -1,9 +1,9 @@
 //! A GPX file (GPS exchange format 1.0 or 1.1, an XML file of tracks, routes and waypoints) as the rows of a table.
 //!
-//! A scanner of our own for the few marks that hold a point, since the parsers that are kept weigh more than all of the
-//! question that uses this (6 to 8 kB packed, quick-xml and xmlparser; this one about 2). It walks the text once, keeps
-//! nothing but the rows, whatever the depth, and knows no entities but XML's own: a file that declares any is refused.
-//! Cells are passed on as they are written, so that what is no number is named at its row like anything typed.
+//! A scanner of our own for the few marks that hold a point: the parsers that are kept (quick-xml, xmlparser) weigh 7.7
+//! and 6.2 kB packed before a row is made of what they find, all of this 3.5. It walks the text once, keeps nothing but
+//! the rows, whatever the depth, and knows no entities but XML's own: a file that declares any is refused. Cells are
+//! passed on as they are written, so that what is no number is named at its row like anything typed.
 //!
 //! It does not check that a file is valid GPX. What lies deeper inside a point, where devices put data of their own, is
 //! passed over.

@@ -69,6 +69,7 @@ pub fn draw(case: &Case) -> Option<Figure> {
         bands: vec![],
         series,
         marks,
+        readings: vec![],
         note: "The line of sight is drawn straight, heights larger than lengths.".to_owned(),
         table: "airs",
     })

@@ -69,6 +69,7 @@ pub fn draw(worth: &Worth, show: Show) -> Figure {
             gap(0.5, sight.min(0.0), sight.max(0.0), "refraction", worth.refraction),
             gap(0.8, level.min(sight), level.max(sight), "together", worth.combined.bias),
         ],
+        readings: vec![],
         note: format!(
             "Heights are drawn about {} times larger than lengths; the gaps are in proportion.",
             significant(tall, 1)

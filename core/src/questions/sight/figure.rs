@@ -4,7 +4,7 @@ use super::case::{Case, Count};
 use crate::quantity::show::Round;
 use crate::quantity::unit::Quantity;
 use crate::question::Asked;
-use crate::question::figure::{Band, Figure, Mark, Series, Stroke, axis};
+use crate::question::figure::{Band, Figure, Mark, Reading, Series, Stroke, axis};
 
 /// Points of a line.
 const POINTS: u32 = 60;
@@ -39,6 +39,16 @@ pub fn draw(asked: &Asked, case: &Case) -> Figure {
     if let Some(other) = case.other {
         marks.push(Mark::Upright { x: x(other), label: format!("the other, {}", show.distance(other, Round::Near)) });
     }
+    let readings = distances.iter().zip(&errors).skip(1).map(|(d, e)| Reading {
+        at: x(*d),
+        text: format!(
+            "{}: {} to {}",
+            show.distance(*d, Round::Near),
+            show.small(e.bias - e.below, e.half()),
+            show.small(e.bias + e.above, e.half())
+        ),
+    });
+    let readings = readings.collect();
     let far = flips.map_or("no distance in view".to_owned(), |d| show.distance(d, Round::Down).to_string());
     let here = case.error(case.distance);
     let description = format!(
@@ -78,6 +88,7 @@ pub fn draw(asked: &Asked, case: &Case) -> Figure {
             Series { name: "no error".to_owned(), stroke: Stroke::Thin, x: vec![0.0, 1.0], y: vec![y(0.0), y(0.0)] },
         ],
         marks,
+        readings,
         note: format!("Drawn to {} either way; what lies beyond runs along the edge.", show.entered(height)),
         table: "parts",
     }
