@@ -28,7 +28,7 @@ pub struct Question {
     /// Fields in the order in which they are entered.
     pub fields: &'static [Field],
     /// The results the answer can hold.
-    pub results: &'static [Promise],
+    pub results: &'static [Promised],
     /// Dangers of this work, and who governs.
     pub cautions: &'static [Caution],
     /// Where the formulas and figures come from.
@@ -42,7 +42,7 @@ pub struct Question {
 /// A result that a question's answer can hold.
 #[derive(Debug, Serialize)]
 #[cfg_attr(feature = "ts", derive(tsify::Tsify))]
-pub struct Promise {
+pub struct Promised {
     /// Name at the boundary.
     pub name: &'static str,
     /// Name on the page, in trade words.

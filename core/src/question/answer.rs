@@ -1,7 +1,7 @@
 //! What comes back: the decision first, then everything it rests on.
 
 use super::figure::Figure;
-use super::{Asked, Promise, Question};
+use super::{Asked, Promised, Question};
 pub use crate::doubt::State;
 use crate::quantity::show::Shown;
 use serde::Serialize;
@@ -197,13 +197,13 @@ impl Answer {
     /// Adds a result; `doubt` with its text.
     pub fn result(
         &mut self,
-        promise: &Promise,
+        promise: &Promised,
         value: Option<f64>,
         shown: Shown,
         doubt: Option<Doubt>,
         meaning: String,
     ) {
-        let Promise { name, label, .. } = *promise;
+        let Promised { name, label, .. } = *promise;
         self.results.push(Outcome { name, label, value, text: shown.text, unit: shown.unit, doubt, meaning });
     }
     /// Adds a note.

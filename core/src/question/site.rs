@@ -2,7 +2,7 @@
 
 use super::answer::{Answer, Doubt, Fix, Level, Note};
 use super::field::{Field, Opt};
-use super::{Asked, Promise};
+use super::{Asked, Promised};
 use crate::air::guide::{self, KRange, Sky};
 use crate::constants::{EARTH_RADIUS, RADIUS_SPREAD};
 use crate::doubt::Estimate;
@@ -167,7 +167,7 @@ pub fn with_doubt(error: &Estimate, show: Show) -> (Shown, Doubt) {
 }
 
 /// The result that says which k is in force.
-pub fn k_result(promise: &Promise, air: &AirInForce, show: Show, answer: &mut Answer) {
+pub fn k_result(promise: &Promised, air: &AirInForce, show: Show, answer: &mut Answer) {
     let k = air.k;
     let half = (k.value.0 - k.low.0).max(k.high.0 - k.value.0);
     let doubt = Doubt { value: half, text: format!("from {} to {}", show.k(k.low.0), show.k(k.high.0)) };

@@ -6,7 +6,7 @@ mod sheet;
 
 use crate::quantity::unit::Quantity;
 use crate::question::field::{Field, Opt};
-use crate::question::{Answer, Asked, Caution, Promise, Question, site};
+use crate::question::{Answer, Asked, Caution, Promised, Question, site};
 use case::Case;
 
 pub const QUESTION: Question = Question {
@@ -64,30 +64,30 @@ const SHORE: Field = Field::number("shore_distance", "Distance of the shore", Qu
     .range(site::NEAREST, FAR, FAR_OFF)
     .help("Where land is nearer than the horizon: the dip is then that of its waterline.");
 
-const HORIZON: Promise = Promise {
+const HORIZON: Promised = Promised {
     name: "horizon_distance",
     label: "Horizon",
     meaning: "where the line of sight grazes the surface, along the surface",
 };
-const LINE: Promise =
-    Promise { name: "horizon_line", label: "Horizon, straight line", meaning: "from the eye to that place" };
-const DIP: Promise = Promise {
+const LINE: Promised =
+    Promised { name: "horizon_line", label: "Horizon, straight line", meaning: "from the eye to that place" };
+const DIP: Promised = Promised {
     name: "dip",
     label: "Dip",
     meaning: "how far the line to the horizon, or to a nearer shore, points below the horizontal",
 };
-const HIDDEN: Promise = Promise {
+const HIDDEN: Promised = Promised {
     name: "hidden",
     label: "Hidden height",
     meaning: "what stands lower than this at the target's distance is below the horizon",
 };
-const RANGE: Promise = Promise {
+const RANGE: Promised = Promised {
     name: "visible_range",
     label: "Raised at",
     meaning: "the distance at which the top of the target comes over the horizon",
 };
-const K_USED: Promise =
-    Promise { name: "k", label: "k in force", meaning: "coefficient of refraction reckoned with, and its range" };
+const K_USED: Promised =
+    Promised { name: "k", label: "k in force", meaning: "coefficient of refraction reckoned with, and its range" };
 
 fn answer(asked: &Asked, answer: &mut Answer) {
     site::doubt_k(asked, answer);

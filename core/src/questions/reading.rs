@@ -9,7 +9,7 @@ use crate::quantity::unit::Quantity;
 use crate::quantity::{Metres, Tilt};
 use crate::question::answer::{Doubt, State, Table};
 use crate::question::field::{Field, Opt};
-use crate::question::{Answer, Asked, Caution, Promise, Question, site};
+use crate::question::{Answer, Asked, Caution, Promised, Question, site};
 use crate::ray;
 use crate::sight::budget::{Budget, Part, Term};
 
@@ -69,30 +69,30 @@ const DISTANCE_DOUBT: Field = site::DISTANCE_DOUBT
     .help("By default the distance is taken as exact. Pacing is good to a twentieth, that is 5 % (common practice, no source).")
     .default("0 %");
 
-const CORRECTED: Promise = Promise {
+const CORRECTED: Promised = Promised {
     name: "corrected",
     label: "Corrected reading",
     meaning: "what the staff would read on a level surface through the instrument",
 };
-const COMBINED: Promise =
-    Promise { name: "combined", label: "Curvature and refraction", meaning: "what the reading is too large by" };
-const DOUBT: Promise = Promise {
+const COMBINED: Promised =
+    Promised { name: "combined", label: "Curvature and refraction", meaning: "what the reading is too large by" };
+const DOUBT: Promised = Promised {
     name: "doubt",
     label: "Doubt of the correction",
     meaning: "95 % half-width; the greater side where the two differ. The reading's own doubt is not in it",
 };
-const CURVATURE: Promise = Promise {
+const CURVATURE: Promised = Promised {
     name: "curvature",
     label: "Curvature",
     meaning: "how far the level surface lies below the horizontal line at the staff",
 };
-const REFRACTION: Promise = Promise {
+const REFRACTION: Promised = Promised {
     name: "refraction",
     label: "Refraction",
     meaning: "how far the line of sight lies below the horizontal line at the staff; − where it lies above",
 };
-const K_USED: Promise =
-    Promise { name: "k", label: "k in force", meaning: "coefficient of refraction reckoned with, and its range" };
+const K_USED: Promised =
+    Promised { name: "k", label: "k in force", meaning: "coefficient of refraction reckoned with, and its range" };
 
 /// What the entry comes to.
 struct Worth {

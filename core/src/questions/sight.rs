@@ -10,7 +10,7 @@ mod working;
 use crate::limits;
 use crate::quantity::unit::Quantity;
 use crate::question::field::{Field, Opt};
-use crate::question::{Answer, Asked, Caution, Promise, Question, site};
+use crate::question::{Answer, Asked, Caution, Promised, Question, site};
 use case::Case;
 
 pub const QUESTION: Question = Question {
@@ -168,36 +168,36 @@ const READING_GROWTH: Field =
         .help("1 mm in 100 m for an ordinary telescope in still air (common practice, no source).")
         .default("0.01 mm/m")
         .under(site::RULE);
-const fn promise(name: &'static str, label: &'static str, meaning: &'static str) -> Promise {
-    Promise { name, label, meaning }
+const fn promise(name: &'static str, label: &'static str, meaning: &'static str) -> Promised {
+    Promised { name, label, meaning }
 }
-const BIAS: Promise = promise(
+const BIAS: Promised = promise(
     "bias",
     "Bias",
     "what the reading, or the difference of the two, is expected to be out by; + reads too much",
 );
-const DOUBT: Promise =
+const DOUBT: Promised =
     promise("doubt", "Doubt", "95 % half-width about the bias; the greater side where the two differ");
-const CURVATURE: Promise = promise("curvature", "Curvature", "what the earth's curve adds to the reading");
-const REFRACTION: Promise =
+const CURVATURE: Promised = promise("curvature", "Curvature", "what the earth's curve adds to the reading");
+const REFRACTION: Promised =
     promise("refraction", "Refraction", "what the bent line adds to the reading; − where it bends down, k > 0");
-const COLLIMATION_PART: Promise =
+const COLLIMATION_PART: Promised =
     promise("collimation_part", "Collimation", "what the level's own error adds to the reading");
-const READING_PART: Promise = promise("reading_part", "Reading", "doubt of the reading itself");
-const DISTANCE_PART: Promise = promise("distance_part", "Distance", "doubt because the distance is not known exactly");
-const K_USED: Promise = promise("k", "k in force", "coefficient of refraction reckoned with, and its range");
-const REACH_UNCORRECTED: Promise = promise(
+const READING_PART: Promised = promise("reading_part", "Reading", "doubt of the reading itself");
+const DISTANCE_PART: Promised = promise("distance_part", "Distance", "doubt because the distance is not known exactly");
+const K_USED: Promised = promise("k", "k in force", "coefficient of refraction reckoned with, and its range");
+const REACH_UNCORRECTED: Promised = promise(
     "reach_uncorrected",
     "Reach, nothing corrected",
     "longest sight whose bias and doubt are within the allowance",
 );
-const REACH_CORRECTED: Promise =
+const REACH_CORRECTED: Promised =
     promise("reach_corrected", "Reach, correction applied", "longest sight whose doubt alone is within the allowance");
-const OTHER_SHORTEST: Promise =
+const OTHER_SHORTEST: Promised =
     promise("other_shortest", "Other sight at least", "shortest other sight that still balances this one");
-const OTHER_LONGEST: Promise =
+const OTHER_LONGEST: Promised =
     promise("other_longest", "Other sight at most", "longest other sight that still balances this one");
-const BOTH_WAYS: Promise = promise(
+const BOTH_WAYS: Promised = promise(
     "both_ways",
     "Doubt when observed both ways",
     "95 % half-width of the mean of the differences seen from both ends",

@@ -7,7 +7,7 @@ use crate::horizon;
 use crate::quantity::show::{Show, Shown, significant};
 use crate::quantity::unit::{ARC_MINUTE, NAUTICAL_MILE, Quantity, Unit};
 use crate::quantity::{Coefficient, Metres};
-use crate::question::{Asked, Promise, site};
+use crate::question::{Asked, Promised, site};
 
 /// What can be reckoned for one k.
 #[derive(Clone, Copy, PartialEq)]
@@ -23,7 +23,7 @@ impl What {
     /// In the order of the results.
     pub const ALL: [What; 5] = [What::Horizon, What::Line, What::Dip, What::Hidden, What::Range];
 
-    pub fn promise(self) -> &'static Promise {
+    pub fn promise(self) -> &'static Promised {
         match self {
             What::Horizon => &HORIZON,
             What::Line => &LINE,
