@@ -1,6 +1,8 @@
 // Shows an answer, top down: the decision, what has to be put right, the numbers, the picture, what it all rests on.
 import { byId, copy, fill, fixKeys, within } from "./dom.js";
+import { unitName } from "./field.js";
 import { drawFigure } from "./figure.js";
+import { cellsOf, heading, isStruck, linesOf, shown } from "./rows.js";
 
 /** @typedef {import("./core.js").Answer} Answer */
 /** @typedef {import("./core.js").Question} Question */
@@ -8,13 +10,14 @@ import { drawFigure } from "./figure.js";
 /** @typedef {import("./core.js").Note} Note */
 /** @typedef {import("./core.js").Problem} Problem */
 /** @typedef {import("./core.js").Fix} Fix */
+/** @typedef {import("./core.js").Cell} Cell */
 
 /**
- * @param {Question} question @param {Record<string, string>} entry @param {Answer} answer
+ * @param {Question} question @param {Answer} answer
  * @param {Problem[]} problems those that may be shown now
- * @param {{ fix: (fix: Fix) => void, focus: (field: string) => void }} act
+ * @param {{ fix: (fix: Fix) => void, focus: (field: string, cell?: Cell) => void }} act
  */
-export function showAnswer(question, entry, answer, problems, act) {
+export function showAnswer(question, answer, problems, act) {
   showVerdict(answer);
   showProblems(question, problems, act);
   showList("results", "dl", answer.results.map(result));
@@ -25,7 +28,6 @@ export function showAnswer(question, entry, answer, problems, act) {
   const asked = answer.notes.filter((note) => note.fixes.length > 0);
   showList("asks", "ul", asked.map((each) => noteItem(each, act.fix)));
   showList("notes", "ul", answer.notes.filter((note) => !asked.includes(note)).map((each) => noteItem(each, act.fix)));
-  showEntered(question, entry, answer);
 }
 
 /** What stays the same for every answer of a question. @param {Question} question */
@@ -70,7 +72,7 @@ function line(text) {
 
 /**
  * @param {Question} question @param {Problem[]} problems
- * @param {{ fix: (fix: Fix) => void, focus: (field: string) => void }} act
+ * @param {{ fix: (fix: Fix) => void, focus: (field: string, cell?: Cell) => void }} act
  */
 function showProblems(question, problems, act) {
   showList("problems", "ul", problems.map((problem) => {
@@ -82,7 +84,7 @@ function showProblems(question, problems, act) {
     if (label) link.title = label;
     link.addEventListener("click", (event) => {
       event.preventDefault();
-      act.focus(problem.field);
+      act.focus(problem.field, problem.cell);
     });
     fixKeys(within(item, ".keys"), problem.fixes, act.fix);
     return item;
@@ -102,7 +104,7 @@ function result(outcome) {
 }
 
 /** @param {Table} data */
-function table(data) {
+export function table(data) {
   const box = copy("t-table");
   const caption = within(box, "caption");
   caption.textContent = data.caption;
@@ -151,18 +153,48 @@ function showFigure({ figure }, behind) {
 }
 
 /**
- * The entry as lines of text, for the printed sheet: boxes clip what they hold.
+ * The entry as lines of text and tables, for the printed sheet: boxes clip what they hold.
  * @param {Question} question @param {Record<string, string>} entry @param {Answer} answer
  */
-function showEntered(question, entry, answer) {
+export function showEntered(question, entry, answer) {
+  /** @type {HTMLElement[]} */
+  const tables = [];
   byId("entered").replaceChildren(...question.fields.flatMap((field) => {
     const { name, label, kind } = field;
     const read = answer.read.find((each) => each.field === name);
-    const shown = read?.text || (read?.assumed ? field.default : entry[name]);
-    if (!shown) return [];
+    const text = read?.text || (read?.assumed ? field.default : entry[name]);
+    if (!text) return [];
+    if (kind.type === "table") {
+      const units = new URLSearchParams(answer.entry);
+      const columns = kind.columns.map((column) =>
+        ({ field: column, unit: units.get(unitName(`${name}.${column.name}`)) ?? "" }));
+      tables.push(rowsTable(label, columns, linesOf(text)).box);
+      return [line(`${label}: ${read?.echo}`)];
+    }
     const options = kind.type === "choice" ? kind.options : [];
-    const words = options.find((option) => option.value === shown)?.label ?? shown;
+    const words = options.find((option) => option.value === text)?.label ?? text;
     const said = [words, read?.text && read.unit, read?.assumed && "(assumed)", !read && "(not read)"];
     return [line(`${label}: ${said.filter(Boolean).join(" ")}`)];
   }));
+  byId("entered-tables").replaceChildren(...tables);
+}
+
+/**
+ * Rows of a field as a table to be read. A column that holds nothing is left out, unless it must be filled.
+ * @param {string} caption @param {readonly Pick<import("./rows.js").Column, "field" | "unit">[]} columns
+ * @param {readonly string[]} lines @param {readonly number[]} [which] those that are shown
+ */
+export function rowsTable(caption, columns, lines, which = [...lines.keys()]) {
+  const cells = which.map((at) => cellsOf(lines[at] ?? ""));
+  const used = columns.flatMap((column, at) => (column.field.required || cells.some((row) => row[at]) ? [{ column, at }] : []));
+  const box = table({
+    name: "", caption, columns: ["No.", ...used.map(({ column }) => heading(column))],
+    rows: cells.map((row, index) => [String((which[index] ?? 0) + 1),
+      ...used.map(({ column, at }) => shown(column.field, row[at]))]),
+  });
+  const rows = box.querySelectorAll("tbody tr");
+  which.forEach((at, index) => rows[index]?.classList.toggle("struck", isStruck(lines[at] ?? "")));
+  /** @param {import("./core.js").Cell} cell */
+  const cellAt = ({ row, column }) => rows[which.indexOf(row)]?.children[used.findIndex(({ at }) => at === column) + 1];
+  return { box, cellAt };
 }

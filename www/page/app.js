@@ -1,8 +1,9 @@
 // Start, addresses, and the entry of the question in view. What is asked and answered comes from the core alone.
 import init, { ask, catalogue } from "./core.js";
-import { showAnswer, showStanding, spoken } from "./answer.js";
+import { showAnswer, showEntered, showStanding, spoken } from "./answer.js";
 import { byId, copy, download, fill, say, within } from "./dom.js";
-import { buildForm, unitName, usualUnit } from "./form.js";
+import { columnsOf, infoOf, namesIn, unitName, unitsOf, usualUnit } from "./field.js";
+import { buildForm } from "./form.js";
 import { hint, startHint } from "./install.js";
 import { LINK_AT_MOST, readLink } from "./link.js";
 import { startOffline } from "./offline.js";
@@ -15,6 +16,9 @@ import { asideText, asides, dropAsides, keepAside, openStore, record, recordsOf,
 /** @typedef {Record<string, string>} Entry */
 
 const STEPS_KEPT = 50;
+const STEPS_SIZE = 1_000_000; // characters of all of them: each key writes them to disk
+const SLOW_MS = 8; // half a frame: an answer that takes longer waits until the person stops typing
+const PAUSE_MS = 150;
 const SETTLED_MS = 1000; // then an answer is read out and the address follows
 
 /** @type {Catalogue} */
@@ -35,12 +39,14 @@ const visited = new Set();
 let earlier;
 let pressing = false;
 let settling = 0;
+let took = 0; // milliseconds of the last answer
+let waiting = 0; // for an answer
 
 const site = () => record("site");
 const own = () => record(`question-${question?.id}`);
 /** @param {Question} of @param {boolean} shared */
 const namesOf = (of, shared) => of.fields.filter((field) => field.shared === shared)
-  .flatMap((field) => [field.name, unitName(field.name)]);
+  .flatMap(namesIn);
 /** @param {Entry} from @param {string[]} names @returns {Entry} */
 const pick = (from, names) => Object.fromEntries(names.flatMap((name) => {
   const text = from[name];
@@ -71,9 +77,11 @@ function keep() {
 function pinUnits(old) {
   const fields = all.questions.flatMap((each) => each.fields);
   for (const texts of [entry, ...recordsOf("").map((kept) => kept.entry)]) {
-    for (const { name, kind } of fields) {
-      const info = kind.type === "number" && all.quantities.find((each) => each.name === kind.quantity);
-      if (info && texts[name] && !texts[unitName(name)]) texts[unitName(name)] = usualUnit(info, old);
+    for (const field of fields) {
+      for (const [unit, of] of unitsOf(field)) {
+        const info = infoOf(all.quantities, of);
+        if (info && texts[field.name] && !texts[unit]) texts[unit] = usualUnit(info, old);
+      }
     }
   }
   for (const kept of recordsOf("question-")) save(kept);
@@ -93,13 +101,17 @@ function change(patch, of = "") {
   }
   keep();
   if (of === "" || patch[all.units_field] !== undefined) form?.write(entry);
-  refresh();
+  clearTimeout(waiting);
+  if (of !== "" && took > SLOW_MS) waiting = setTimeout(refresh, PAUSE_MS);
+  else refresh();
 }
 
 /** Adds a state to come back to. @param {Entry[]} list @param {Entry} state */
 function stack(list, state) {
   list.push({ ...state });
   list.splice(0, list.length - STEPS_KEPT);
+  const size = () => list.flatMap(Object.values).reduce((sum, text) => sum + text.length, 0);
+  while (list.length > 1 && size() > STEPS_SIZE) list.shift();
 }
 
 /** @param {"undo" | "redo"} from @param {"undo" | "redo"} to */
@@ -123,14 +135,19 @@ function show(state) {
 
 /** Asks, and shows what comes back. */
 function refresh() {
+  clearTimeout(waiting);
+  waiting = 0;
   if (!question) return;
+  const start = performance.now();
   answer = ask(question.id, entry);
+  took = performance.now() - start;
   tried ||= question.fields.every((field) => !field.required || entry[field.name]);
-  const problems = answer.problems.filter((problem) => tried || visited.has(problem.field));
+  const problems = answer.problems.filter(({ field, cell }) => tried || cell || visited.has(field));
   const typing = document.activeElement?.getAttribute("name") ?? ""; // nothing is wrong yet with what is being typed
-  const shown = problems.filter((problem) => problem.field !== typing || visited.has(typing));
+  const shown = problems.filter(({ field, cell }) =>
+    (field !== typing || visited.has(typing)) && (!cell || form?.ripe(field, cell)));
   form?.tell(answer.read, shown);
-  showAnswer(question, entry, answer, shown, { fix, focus: (name) => form?.focus(name) });
+  showAnswer(question, answer, shown, { fix, focus: (name, cell) => form?.focus(name, cell) });
   for (const list of /** @type {const} */ (["undo", "redo"])) {
     /** @type {HTMLButtonElement} */ (byId(list)).disabled = own()[list].length === 0;
   }
@@ -144,15 +161,33 @@ function settle() {
   const words = spoken(answer);
   if (byId("said").textContent !== words) byId("said").textContent = words;
   if (earlier) return; // the address still is the link that was followed
-  history.replaceState({ own: true }, "", `#${question.id}?${answer.entry}`);
+  // What no one could read back is left out: it is kept here all the same.
+  const link = answer.entry.length > LINK_AT_MOST ? "" : `?${answer.entry}`;
+  history.replaceState({ own: true }, "", `#${question.id}${link}`);
   if (answer.verdict.state !== "unknown") hint();
 }
 
 /** @param {import("./core.js").Fix} given */
-function fix({ field, text, unit }) {
+function fix({ field, cell, text, unit }) {
+  if (cell) {
+    form?.boxes.get(field)?.cells?.put(cell, text);
+    form?.focus(field, cell);
+    return;
+  }
   const numeric = question?.fields.some((each) => each.name === field && each.kind.type === "number");
   change({ [field]: text, ...(numeric ? { [unitName(field)]: unit } : {}) });
   form?.focus(field);
+}
+
+/** What the calculator makes of some texts alone. @param {Entry} patch */
+const read = (patch) => ask(question?.id ?? "", { [all.units_field]: units(), ...patch });
+
+/** The entry with each table as it was read: whatever separated its cells, now tabs do.
+ * @param {Question} of @param {Entry} given @returns {Entry} */
+function tidied(of, given) {
+  const tables = of.fields.filter((field) => columnsOf(field).length > 0 && given[field.name]);
+  const said = tables.length > 0 ? new URLSearchParams(ask(of.id, given).entry) : new URLSearchParams();
+  return { ...given, ...pick(Object.fromEntries(said), tables.flatMap(namesIn)) };
 }
 
 /** A unit typed behind the number moves into the list beside the box. @param {string} name */
@@ -175,6 +210,7 @@ function left(name) {
   }
   // a finger's press is over before focus moves, and its click follows in the same task
   setTimeout(() => {
+    if (waiting) refresh();
     visited.add(name);
     step = "";
     adopt(name);
@@ -206,7 +242,7 @@ function route() {
   tried = false;
   showStanding(question);
   entry = keptEntry(question);
-  const around = { quantities: all.quantities, units, change, left, fix, end };
+  const around = { quantities: all.quantities, units, change, left, fix, end, read };
   form = buildForm(question.fields, around, own().open, () => save(own()));
   show(entry);
   if (link && !history.state?.own) follow(question, link);
@@ -214,7 +250,8 @@ function route() {
 
 /** Shows the entry that a link brings, beside the person's own. @param {Question} of @param {string} link */
 function follow(of, link) {
-  const { known, unknown } = readLink(of, all.quantities, link);
+  const { known: given, unknown } = readLink(of, all.quantities, link);
+  const known = tidied(of, given);
   if (unknown) {
     keepAside("part of a link that this page does not know", unknown);
     showAsides();
@@ -276,6 +313,7 @@ function connect() {
   }
   addEventListener("hashchange", route);
   addEventListener("beforeprint", () => {
+    if (question) showEntered(question, entry, answer);
     byId("printed").textContent = new Date().toLocaleString(undefined, { dateStyle: "long", timeStyle: "long" });
     for (const details of byId("question").querySelectorAll("details")) details.open = true;
   });

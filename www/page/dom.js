@@ -65,10 +65,10 @@ export function say(text, keys = {}) {
   host.append(message);
 }
 
-/** Hands a text to the person as a file. @param {string} name @param {string} text */
-export function download(name, text) {
+/** Hands a text to the person as a file. @param {string} name @param {string} text @param {string} [type] */
+export function download(name, text, type = "text/plain") {
   const link = document.createElement("a");
-  link.href = URL.createObjectURL(new Blob([text], { type: "text/plain" }));
+  link.href = URL.createObjectURL(new Blob([text], { type }));
   link.download = name;
   link.click();
   setTimeout(() => URL.revokeObjectURL(link.href), 60_000);

@@ -1,65 +1,22 @@
 // The fields of a question, made from the catalogue. A kind of field is one maker in `MAKERS`; none knows a name.
 import { byId, copy, fixKeys, within } from "./dom.js";
+import { dress, fillUnits, infoOf, startSign, unitName, usualUnit } from "./field.js";
+import { tableBox } from "./table.js";
 
-/** @typedef {import("./core.js").Field} Field */
-/** @typedef {import("./core.js").Fix} Fix */
+/** @typedef {import("./field.js").Field} Field */
+/** @typedef {import("./field.js").Entry} Entry */
+/** @typedef {import("./field.js").Around} Around */
+/** @typedef {import("./field.js").Box} Box */
+/** @typedef {import("./field.js").Cell} Cell */
 /** @typedef {import("./core.js").Read} Read */
-/** @typedef {import("./core.js").QuantityInfo} QuantityInfo */
 /** @typedef {import("./core.js").Problem} Problem */
-/** @typedef {Record<string, string>} Entry */
-/**
- * What a form needs to know of the rest.
- * @typedef {object} Around
- * @property {readonly QuantityInfo[]} quantities
- * @property {() => string} units the choice of units in force
- * @property {(patch: Entry, step: string) => void} change texts by name; changes of one step are undone together
- * @property {(name: string) => void} left a field is done with, for now
- * @property {(fix: Fix) => void} fix
- * @property {() => void} end Enter in the last field
- */
-/**
- * One field on the page.
- * @typedef {object} Box
- * @property {Field} field
- * @property {HTMLElement} root
- * @property {(entry: Entry) => void} write shows an entry
- * @property {() => HTMLElement} target what is focused
- */
 /** @typedef {(field: any, around: Around) => Box} Maker */
 
 /** More options than these become a list instead of keys. */
 const KEYS_AT_MOST = 5;
 
 /** @type {Record<string, Maker>} */
-const MAKERS = { number: numberBox, choice: choiceBox };
-
-/** Name under which the unit picked beside a box travels. @param {string} name */
-export const unitName = (name) => `${name}.unit`;
-
-/** The unit a bare number has. @param {QuantityInfo} info @param {string} units */
-export const usualUnit = (info, units) => /** @type {any} */ (info)[units] ?? info.metric;
-
-/**
- * Label, help, error and echo, and what ties them to the control.
- * @param {HTMLElement} root @param {Field} field @param {HTMLElement} control
- */
-function dress(root, field, control) {
-  const id = `field-${field.name}`;
-  const label = within(root, "label, legend");
-  label.textContent = field.label;
-  const left = field.default && field.kind.type === "number" ? `Left empty: ${field.default}.` : "";
-  const help = within(root, ".help");
-  help.textContent = [field.help, left].filter(Boolean).join(" ");
-  help.hidden = help.textContent === "";
-  help.id = `${id}-help`;
-  within(root, ".error p").id = `${id}-error`;
-  within(root, ".echo").id = `${id}-echo`;
-  control.setAttribute("aria-describedby", `${id}-help ${id}-error ${id}-echo`);
-  if (label instanceof HTMLLabelElement) {
-    control.id = id;
-    label.htmlFor = id;
-  }
-}
+const MAKERS = { number: numberBox, choice: choiceBox, text: textBox, table: tableBox };
 
 /** @type {Maker} */
 function numberBox(field, around) {
@@ -69,31 +26,18 @@ function numberBox(field, around) {
   const sign = within(root, ".sign");
   const name = field.name;
   const unit = unitName(name);
-  const info = around.quantities.find((each) => each.name === field.kind.quantity);
+  const info = infoOf(around.quantities, field);
   dress(root, field, input);
   input.name = name;
   units.name = unit;
   units.setAttribute("aria-label", `Unit of ${field.label}`);
-  // Closed, the list shows the symbol only; opened, the words too, so that k and m are not taken for each other.
-  const options = (info?.units ?? []).map(({ symbol, label }) => {
-    const option = new Option(symbol, symbol);
-    units.addEventListener("pointerdown", () => { option.text = `${symbol}  (${label})`; });
-    units.addEventListener("focus", () => { option.text = `${symbol}  (${label})`; });
-    for (const event of ["blur", "change"]) units.addEventListener(event, () => { option.text = symbol; });
-    return option;
-  });
-  units.append(...options);
-  units.hidden = options.length === 0;
+  fillUnits(units, info);
   sign.hidden = !field.kind.negative;
 
-  input.addEventListener("input", () => around.change({ [name]: input.value }, name));
+  const typed = () => around.change({ [name]: input.value }, name);
+  input.addEventListener("input", typed);
   units.addEventListener("change", () => around.change({ [unit]: units.value }, unit));
-  sign.addEventListener("pointerdown", (event) => event.preventDefault()); // keeps focus and keyboard where they are
-  sign.addEventListener("click", () => {
-    const text = input.value.trim();
-    input.value = /^[-−–]/.test(text) ? text.slice(1).trimStart() : `−${text}`;
-    around.change({ [name]: input.value }, name);
-  });
+  startSign(sign, input, typed);
   return {
     field,
     root,
@@ -102,6 +46,25 @@ function numberBox(field, around) {
       const text = entry[name] ?? "";
       if (input.value !== text) input.value = text;
       units.value = entry[unit] || (info ? usualUnit(info, around.units()) : "");
+    },
+  };
+}
+
+/** @type {Maker} */
+function textBox(field, around) {
+  const root = copy("t-text");
+  const input = /** @type {HTMLInputElement} */ (within(root, "input"));
+  const name = field.name;
+  dress(root, field, input);
+  input.name = name;
+  input.addEventListener("input", () => around.change({ [name]: input.value }, name));
+  return {
+    field,
+    root,
+    target: () => input,
+    write(entry) {
+      const text = entry[name] ?? "";
+      if (input.value !== text) input.value = text;
     },
   };
 }
@@ -205,12 +168,12 @@ export function buildForm(fields, around, open, onOpen) {
   host.append(...groups.values());
 
   /** Those that can be reached now, in the order in which they are entered. */
-  const reachable = () => [...host.querySelectorAll("input, select.wide")].filter(
+  const reachable = () => [...host.querySelectorAll("input, select.wide, .new")].filter(
     (control) => !control.closest("details:not([open])"));
 
   host.onkeydown = (event) => {
     const at = event.target;
-    if (event.key !== "Enter" || event.isComposing || !(at instanceof Element) || !at.matches("input")) return;
+    if (event.defaultPrevented || event.key !== "Enter" || event.isComposing || !(at instanceof Element) || !at.matches("input")) return;
     event.preventDefault();
     const here = [...boxes.values()].find((box) => box.root.contains(at));
     const next = reachable().find((control) => !here?.root.contains(control)
@@ -225,28 +188,33 @@ export function buildForm(fields, around, open, onOpen) {
     boxes,
     /** @param {Entry} entry */
     write(entry) { for (const box of boxes.values()) box.write(entry); },
-    /** Focuses a field, opening its group. @param {string} name */
-    focus(name) {
+    /** Focuses a field, or a cell of it, opening its group. @param {string} name @param {Cell} [cell] */
+    focus(name, cell) {
       const box = boxes.get(name);
       const details = box?.root.closest("details");
       if (details) details.open = true;
-      box?.target().focus();
+      if (cell) box?.cells?.focus(cell);
+      else box?.target().focus();
     },
+    /** Whether what is wrong there may be said while someone types. @param {string} name @param {Cell} cell */
+    ripe: (name, cell) => boxes.get(name)?.cells?.ripe(cell) ?? true,
     /**
      * Shows how each field was read, and what is wrong with it where that may be said.
      * @param {Read[]} read @param {Problem[]} problems
      */
     tell(read, problems) {
-      for (const { field, root, target } of boxes.values()) {
-        const problem = problems.find((each) => each.field === field.name);
+      for (const { field, root, target, cells } of boxes.values()) {
+        const mine = problems.filter((each) => each.field === field.name);
+        cells?.tell(mine.filter((each) => each.cell));
+        const problem = mine.find((each) => !each.cell);
         const error = within(root, ".error");
         error.hidden = !problem;
         within(error, "p").textContent = problem?.message ?? "";
         fixKeys(within(error, ".keys"), problem?.fixes ?? [], around.fix);
-        if (field.kind.type === "number") target().setAttribute("aria-invalid", String(Boolean(problem)));
+        if (target().matches("[type=text][name]")) target().setAttribute("aria-invalid", String(Boolean(problem)));
         root.classList.toggle("wrong", Boolean(problem));
         within(root, ".echo").textContent = read.find((each) => each.field === field.name)?.echo ?? "";
-        const details = problem && root.closest("details");
+        const details = mine.length > 0 && root.closest("details");
         if (details) details.open = true;
       }
     },

@@ -1,5 +1,5 @@
 // Reads the entry that an address carries.
-import { unitName } from "./form.js";
+import { infoOf, namesIn, unitsOf } from "./field.js";
 
 export const LINK_AT_MOST = 8192; // characters that are read
 
@@ -13,14 +13,11 @@ export function readLink(of, quantities, link) {
   const known = {};
   let unknown = link.slice(LINK_AT_MOST);
   for (const [name, text] of new URLSearchParams(link.slice(0, LINK_AT_MOST))) {
-    const field = of.fields.find((each) => each.name === name || unitName(each.name) === name);
-    const { kind } = field ?? {};
-    const isUnit = field && field.name !== name;
-    const list = kind?.type === "number"
-      ? quantities.find((each) => each.name === kind.quantity)?.units.map((each) => each.symbol)
-      : kind?.type === "choice" ? kind.options.map((each) => each.value) : undefined;
-    const fits = field && !(name in known)
-      && (isUnit ? kind?.type === "number" && list?.includes(text) : kind?.type !== "choice" || list?.includes(text));
+    const field = of.fields.find((each) => namesIn(each).includes(name));
+    const unitOf = field && unitsOf(field).find(([unit]) => unit === name)?.[1];
+    const list = unitOf ? infoOf(quantities, unitOf)?.units.map((each) => each.symbol) ?? []
+      : field?.kind.type === "choice" ? field.kind.options.map((each) => each.value) : undefined;
+    const fits = field && !(name in known) && (!list || list.includes(text));
     if (fits) known[name] = text;
     else unknown += `\n${name}=${text}`;
   }

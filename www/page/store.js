@@ -169,7 +169,8 @@ async function write() {
 
 /** @param {Kept} kept */
 async function put(kept) {
-  const copied = structuredClone(kept);
+  // Texts do not change, and states to come back to neither: typing on changes only the entry itself.
+  const copied = { ...kept, entry: { ...kept.entry }, undo: [...kept.undo], redo: [...kept.redo], open: { ...kept.open } };
   await transact("readwrite", (store) => {
     const old = store.get(kept.id);
     old.onsuccess = () => {

@@ -23,7 +23,8 @@ pub struct Budget {
 /// The figures the page is held to. The single file is no part of a visit.
 pub const BUDGETS: [Budget; 4] = [
     Budget { name: "page and style", most: 13_000, belongs: |name| name == PAGE || name == STYLE },
-    Budget { name: "JavaScript", most: 25_000, belongs: |name| name.ends_with(".js") },
+    // 25 kB held the page without tables: booking, pasting and saving rows come to a quarter more.
+    Budget { name: "JavaScript", most: 31_000, belongs: |name| name.ends_with(".js") },
     Budget { name: "wasm", most: 100_000, belongs: |name| name == WASM },
     Budget { name: "first visit", most: 150_000, belongs: |name| name != SINGLE },
 ];
