@@ -23,6 +23,8 @@ mod offline;
 mod pictures;
 #[path = "browser/shapes.rs"]
 mod shapes;
+#[path = "browser/table.rs"]
+mod table;
 
 use farstaff::question::{Answer, ask};
 use farstaff_tests::engine::{Browser, Engine};
@@ -86,7 +88,7 @@ impl Stage<'_> {
 /// A group of steps, by its name.
 type Group = (&'static str, fn(&mut Tally, &Stage));
 
-const GROUPS: [Group; 10] = [
+const GROUPS: [Group; 11] = [
     ("boundary", boundary::run),
     ("network", network::run),
     ("decision", decision::run),
@@ -97,6 +99,7 @@ const GROUPS: [Group; 10] = [
     ("shapes", shapes::run),
     ("access", access::run),
     ("pictures", pictures::run),
+    ("table", table::run),
 ];
 
 fn main() {

@@ -21,6 +21,16 @@ fn keeps_its_budgets() {
 }
 
 #[test]
+fn scripts_travel_without_comments() {
+    for (name, bytes) in site().0.iter().filter(|(name, _)| name.ends_with(".js") && *name != "core.js") {
+        let script = String::from_utf8_lossy(bytes);
+        let comment = script.lines().find(|line| line.trim().starts_with("//") || line.contains("/**"));
+        assert_eq!(comment, None, "{name}");
+        assert!(script.lines().count() > 10, "{name} lost more than its comments");
+    }
+}
+
+#[test]
 fn same_sources_give_the_same_bytes() {
     let sources = farstaff_www::sources().expect("the page builds");
     assert!(sources.assemble().expect("it assembles").0 == site().0);

@@ -14,6 +14,7 @@ pub mod earth;
 pub mod horizon;
 pub mod limits;
 pub mod line;
+mod order;
 pub mod place;
 pub mod quantity;
 pub mod question;

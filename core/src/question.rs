@@ -7,6 +7,7 @@ pub mod answer;
 pub mod asked;
 pub mod field;
 pub mod figure;
+pub mod pencil;
 pub mod site;
 
 use crate::quantity::unit::{QUANTITIES, QuantityInfo};

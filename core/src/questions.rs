@@ -1,5 +1,6 @@
 //! Every question, in the page's order.
 
+mod clearance;
 mod horizon;
 mod reading;
 mod sight;
@@ -7,4 +8,4 @@ mod sight;
 use crate::question::Question;
 
 /// All of them.
-pub const ALL: &[&Question] = &[&sight::QUESTION, &reading::QUESTION, &horizon::QUESTION];
+pub const ALL: &[&Question] = &[&sight::QUESTION, &reading::QUESTION, &clearance::QUESTION, &horizon::QUESTION];

@@ -16,9 +16,12 @@ const NAME: Field = Field::text("name", "Name", 12, "it must fit the sheet", "ga
 const COVER: Field = Field::number("cover", "Cover", Quantity::Height, "12").range(0.0, 100.0, "trees");
 /// In another order than a file has them, and one that no file has.
 const COLUMNS: &[Field] = &[NAME, LATITUDE, COVER, LONGITUDE, GROUND];
-const TABLE: Field =
-    Field::table("profile", "Profile", COLUMNS, "point").rows(5, "so that the test is short").required();
-const BOOK: Field = Field::table("book", "Book", &[GROUND, COVER], "row").rows(5, "so that the test is short");
+const TABLE: Field = Field::table("profile", "Profile", COLUMNS, "point")
+    .rows(5, "so that the test is short")
+    .required()
+    .file(gpx::reader);
+const BOOK: Field =
+    Field::table("book", "Book", &[GROUND, COVER], "row").rows(5, "so that the test is short").file(gpx::reader);
 
 const fn question(fields: &'static [Field]) -> Question {
     let (id, phrase, about, results, cautions, sources) = ("test", "", "", &[], &[], &[]);
@@ -73,7 +76,7 @@ fn a_track() {
     // From then on it is a table like any other.
     let again = Asked::read(&PLACES, &asked.entry);
     assert_eq!((points(&again), &again.entry), (points(&asked), &asked.entry));
-    assert!(again.notes.is_empty() && again.text(&TABLE).starts_with("gate\t52.1\t\t5.25\t12.5\n"));
+    assert!(again.notes.is_empty() && again.text(&TABLE).starts_with("gate\t52.1\t\t5.25\t12.5\t\n"));
 }
 
 #[test]

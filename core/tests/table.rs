@@ -112,12 +112,25 @@ fn what_is_wrong_is_named_at_its_cell() {
 }
 
 #[test]
+fn a_row_of_the_pages_own_ends_in_a_tab() {
+    // The first cell while it is being filled: no comma, space or semicolon in it parts it.
+    for cell in ["12,5", "100 m", "1;2"] {
+        let asked = read(&format!("{cell}\t"));
+        assert_eq!((asked.text(&TABLE), asked.notes.len()), (format!("{cell}\t").as_str(), 0));
+    }
+    // Words typed into the first row are named there and not taken for headings; a row left empty keeps its number.
+    let asked = read("here\tthere\t\n0\t1\t");
+    assert_eq!(asked.problems[0].cell.map(|c| (c.row, c.column)), Some((0, 0)));
+    assert_eq!(read("\t\n5\tabc\t").problems[0].cell.map(|c| (c.row, c.column)), Some((1, 1)));
+}
+
+#[test]
 fn nothing_and_too_much() {
     assert_eq!(read("").problems[0].message, "Enter the profile.");
     assert_eq!(read("\n\n").problems.len(), 1);
     assert!(read(&"0\t1\n".repeat(7)).problems[0].message.contains("6 rows at most"));
-    let many = read(&"x\ty\n".repeat(60));
     // Words that name no column are a row like any other: nothing is left out unsaid.
     assert_eq!(read("station;level of it\n0;12,5").problems.len(), 2);
+    let many = read(&"x\ty\n".repeat(60));
     assert!(many.problems.len() < 30 && many.problems.last().unwrap().message.contains("more cells"));
 }

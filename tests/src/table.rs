@@ -3,9 +3,13 @@
 use crate::{Result, entry};
 use std::path::PathBuf;
 
-/// Written once in a table's head, meant in its rows.
-const SHORT: (&str, &str) =
-    ("&K1", "&k_doubt=0&collimation_doubt=0&reading_doubt=0&reading_growth=0&distance_doubt=0&share=100 %");
+/// Written once in a table's head, meant in its rows; a tab and a new line within a cell.
+const SHORT: [(&str, &str); 4] = [
+    ("&K1", "&k_doubt=0&collimation_doubt=0&reading_doubt=0&reading_growth=0&distance_doubt=0&share=100 %"),
+    ("&K0", "&k_doubt=0&night_k_doubt=0&ground_doubt=0&cover_doubt=0"),
+    ("\\t", "\t"),
+    ("\\n", "\n"),
+];
 
 /// One checked figure of a question.
 pub struct Row {
@@ -32,10 +36,9 @@ pub fn rows(id: &str) -> Result<Vec<Row>> {
             let count = cells.len();
             let [written, what, figure, tolerance, source] =
                 <[String; 5]>::try_from(cells).map_err(|_| format!("{id}.tsv: {count} cells: {line}"))?;
-            let pairs: Vec<(&str, &str)> = written.split('&').filter_map(|pair| pair.split_once('=')).collect();
-            let short: Vec<(&str, &str)> = SHORT.1.split('&').filter_map(|pair| pair.split_once('=')).collect();
-            let short = if written.contains(SHORT.0) { short } else { vec![] };
-            Ok(Row { entry: entry(&[pairs, short].concat()), written, what, figure, tolerance, source })
+            let long = SHORT.iter().fold(written.clone(), |text, (short, long)| text.replace(short, long));
+            let pairs: Vec<(&str, &str)> = long.split('&').filter_map(|pair| pair.split_once('=')).collect();
+            Ok(Row { entry: entry(&pairs), written, what, figure, tolerance, source })
         })
         .collect()
 }

@@ -1,6 +1,8 @@
 // Draws a figure from shares of its width and height: plain lines in the ink of the page, told apart by weight, dash
 // and hatch. All arithmetic here is on pixels.
 
+import { byId } from "./dom.js";
+
 /** @typedef {import("./core.js").Figure} Figure */
 /** @typedef {import("./core.js").Mark} Mark */
 /** @typedef {{ left: number, top: number, right: number, bottom: number }} Area */
@@ -150,8 +152,47 @@ export function drawFigure(figure, host, legend) {
   svg("title", { id: "drawing-title" }, figure.title), svg("desc", { id: "drawing-text" }, figure.description),
   svg("defs", {}, clip, ...figure.bands.map((_, index) => hatch(index))),
   ...grid, inside, svg("path", { d: frame, class: "frame" }), ...drawn.flatMap(({ shapes }) => shapes), ...words));
+  readOff(figure, host, x, plot);
   legend.replaceChildren(...items);
   legend.hidden = items.length === 0;
+}
+
+/**
+ * A finger, a mouse or the arrow keys ask the picture what it says at one place; words and a line answer.
+ * @param {Figure} figure @param {HTMLElement} host @param {(share: number) => number} x @param {Area} plot
+ */
+function readOff({ readings = [] }, host, x, plot) {
+  const words = byId("read-off");
+  const ask = words.dataset.ask ?? "";
+  const cursor = svg("path", { class: "cursor", d: "" });
+  host.firstElementChild?.append(cursor);
+  words.hidden = readings.length === 0;
+  words.textContent = ask;
+  host.tabIndex = readings.length > 0 ? 0 : -1;
+  let chosen = -1;
+  /** @param {number} index */
+  const show = (index) => {
+    chosen = Math.max(0, Math.min(readings.length - 1, index));
+    const reading = readings[chosen];
+    if (!reading) return;
+    cursor.setAttribute("d", path([[x(reading.at), plot.top], [x(reading.at), plot.bottom]]));
+    words.textContent = reading.text;
+  };
+  /** @param {PointerEvent} event */
+  const point = (event) => {
+    if (event.type === "pointermove" && event.pointerType !== "mouse" && event.buttons === 0) return;
+    const box = host.getBoundingClientRect();
+    const at = (event.clientX - box.left) * (width / box.width);
+    const far = readings.map((reading) => Math.abs(x(reading.at) - at));
+    show(far.indexOf(Math.min(...far)));
+  };
+  host.onpointerdown = host.onpointermove = readings.length > 0 ? point : null;
+  host.onkeydown = (event) => {
+    const step = { ArrowLeft: -1, ArrowRight: 1, Home: -readings.length, End: readings.length }[event.key];
+    if (step === undefined || readings.length === 0) return;
+    event.preventDefault();
+    show(chosen < 0 ? (step > 0 ? 0 : readings.length - 1) : chosen + step);
+  };
 }
 
 /**

@@ -2,6 +2,7 @@
 //!
 //! The folder that comes out, `site` in cargo's target folder, is ready for any static host.
 
+mod bare;
 pub mod budget;
 pub mod policy;
 pub mod serve;

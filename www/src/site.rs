@@ -3,6 +3,7 @@
 //! Names carry no hashes: the page asks for nothing after it has started, and the worker takes a version whole or not at
 //! all, each file by its digest.
 
+use crate::bare::bare;
 use crate::policy::{self, integrity};
 use crate::single;
 use crate::wasm::Bindings;
@@ -42,13 +43,17 @@ pub struct Sources {
 impl Sources {
     /// Reads the page's folder.
     pub fn read(dir: &Path, bindings: Bindings) -> Result<Sources> {
-        let mut parts = BTreeMap::from([(WASM.to_owned(), bindings.wasm), (GLUE.to_owned(), bindings.js.into_bytes())]);
+        let mut parts =
+            BTreeMap::from([(WASM.to_owned(), bindings.wasm), (GLUE.to_owned(), bare(&bindings.js).into_bytes())]);
         for entry in fs::read_dir(dir).with_context(|| dir.display().to_string())? {
             let path = entry?.path();
             let name = path.file_name().and_then(|name| name.to_str()).context("a file name that is not text")?;
             // Declarations are for the type check alone.
             if !name.ends_with(".d.ts") {
-                let bytes = fs::read(&path).with_context(|| name.to_owned())?;
+                let mut bytes = fs::read(&path).with_context(|| name.to_owned())?;
+                if name.ends_with(".js") {
+                    bytes = bare(&String::from_utf8(bytes).with_context(|| name.to_owned())?).into_bytes();
+                }
                 ensure!(parts.insert(name.to_owned(), bytes).is_none(), "{name} is a name the build gives itself");
             }
         }

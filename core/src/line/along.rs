@@ -8,6 +8,7 @@
 use super::profile::Profile;
 use crate::air::guide::KRange;
 use crate::constants::HANDBOOK_K;
+use crate::order::sort;
 use crate::quantity::{Coefficient, Metres};
 
 /// Below this height over the ground k is not one number: 15 to 20 m is what lines need for k = 0.13 to hold
@@ -173,12 +174,12 @@ fn pick(three: &[f64; 3], which: usize) -> f64 {
 fn nodes(s: f64, ground: Profile) -> Option<Vec<Node>> {
     let mut known: Vec<(f64, f64)> = ground.points().map(|(_, x, top)| (x, top)).collect();
     known.retain(|(x, top)| x.is_finite() && top.is_finite());
-    known.sort_by(|one, other| one.0.total_cmp(&other.0).then(other.1.total_cmp(&one.1)));
+    sort(&mut known, |point| [point.0, -point.1]);
     known.dedup_by_key(|point| point.0);
     let (first, last) = (*known.first()?, *known.last()?);
     let mut places: Vec<f64> = (0..=PIECES).map(|i| s * f64::from(i) / f64::from(PIECES)).collect();
     places.extend(known.iter().map(|point| point.0).filter(|&x| x > 0.0 && x < s));
-    places.sort_by(f64::total_cmp);
+    sort(&mut places, |place| [*place, 0.0]);
     places.dedup();
     let mut pieces = known.iter().zip(known.iter().skip(1)).peekable();
     let at = |x: f64| {

@@ -6,6 +6,7 @@
 
 use crate::constants::COVERAGE;
 use crate::doubt::Estimate;
+use crate::order::sort;
 use crate::quantity::Metres;
 
 /// A point under the line, and what its clearance may be off by. Doubts are 95 % half-widths, ≥ 0.
@@ -118,7 +119,7 @@ impl Margin {
 /// The points that may matter, the worst first, so that a product of chances soon comes to nought.
 fn worst_first(margins: impl Iterator<Item = Margin>) -> Vec<Margin> {
     let mut all: Vec<(f64, Margin)> = margins.map(|m| (m.blocked(), m)).collect();
-    all.sort_by(|one, other| other.0.total_cmp(&one.0));
+    sort(&mut all, |one| [-one.0, 0.0]);
     let mut left = 0.0;
     while let Some((blocked, _)) = all.last() {
         left += blocked;

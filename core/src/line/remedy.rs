@@ -5,6 +5,7 @@
 
 use super::Line;
 use super::profile::Profile;
+use crate::order::sort;
 use crate::quantity::{Coefficient, Metres};
 
 /// How high the two stations are to be raised.
@@ -93,7 +94,7 @@ impl Line {
 
     /// Both stations and those of `points` that a thread drawn taut over all of them would touch, in order.
     fn hull(&self, mut points: Vec<Point>) -> Vec<Point> {
-        points.sort_by(|one, other| one.0.total_cmp(&other.0).then(one.1.total_cmp(&other.1)));
+        sort(&mut points, |point| [point.0, point.1]);
         points.push((self.s, self.b));
         let mut hull = vec![(0.0, self.a)];
         for new in points {

@@ -58,7 +58,7 @@ pub fn split(text: &str) -> (String, String) {
         digits |= c.is_ascii_digit();
         end = at + c.len_utf8();
     }
-    let (number, unit) = plain.split_at(end);
+    let (number, unit) = plain.split_at_checked(end).unwrap_or((&plain, ""));
     (number.trim().to_owned(), unit.trim().to_owned())
 }
 
@@ -125,7 +125,7 @@ fn meanings(text: &str) -> Vec<String> {
     let strip = |t: &str| t.replace(['.', ','], "");
     let mut found = vec![];
     if let Some(at) = text.rfind(['.', ',']) {
-        let (whole, rest) = text.split_at(at);
+        let (whole, rest) = text.split_at_checked(at).unwrap_or((text, ""));
         if whole.contains(['.', ',']) && !rest.is_empty() {
             found.push(format!("{}.{}", strip(whole), strip(rest)));
         }
@@ -140,8 +140,22 @@ fn meanings(text: &str) -> Vec<String> {
 ///
 /// The sign of the first part is the sign of all. Minutes and seconds must be below 60. `None` where it is not of that form.
 pub fn sexagesimal(text: &str) -> Option<Result<Number, NotANumber>> {
-    let plain = text.trim().replace(['−', '–'], "-").replace("''", "″").replace("′′", "″");
-    let plain = plain.replace(['\'', '’', '′'], "′").replace(['"', '”', '“'], "″").replace(['º', 'd'], "°");
+    let mut plain = String::with_capacity(text.len());
+    for c in text.trim().chars() {
+        let c = match c {
+            '−' | '–' => '-',
+            '\'' | '’' => '′',
+            '"' | '”' | '“' => '″',
+            'º' | 'd' => '°',
+            c => c,
+        };
+        if c == '′' && plain.ends_with('′') {
+            plain.pop();
+            plain.push('″');
+        } else {
+            plain.push(c);
+        }
+    }
     if !plain.contains(['°', '′', '″']) {
         return None;
     }

@@ -107,7 +107,8 @@ impl Show {
     }
     /// A length in metres or feet to two significant digits of `grain`.
     pub fn metres(self, si: f64, grain: f64) -> Shown {
-        self.small_in(&Quantity::Height.usual(self.0), si, grain.abs().max(0.001))
+        let grain = if si == 0.0 { 1.0 } else { grain.abs().max(0.001) };
+        self.small_in(&Quantity::Height.usual(self.0), si, grain)
     }
     /// A height in words: as many digits as it has, up to the centimetre or the hundredth of a foot.
     pub fn height_words(self, si: f64) -> Shown {

@@ -1,5 +1,6 @@
 //! A field of a question: what is asked, in which quantity, over which range and why.
 
+use super::asked::gpx::Rows;
 use crate::quantity::unit::Quantity;
 use serde::Serialize;
 
@@ -25,7 +26,14 @@ pub struct Field {
     pub shared: bool,
     /// Heading under which it stands; empty for those always in view.
     pub group: &'static str,
+    /// Reads a file that is no table into the rows of this one: GPX for a table with positions.
+    #[serde(skip)]
+    #[cfg_attr(feature = "ts", tsify(skip))]
+    pub file: Option<FileReader>,
 }
+
+/// Text, columns, most rows → rows; `None` where the text is no such file, words where it is a broken one.
+pub type FileReader = fn(&str, &[Field], usize) -> Option<Result<Rows, String>>;
 
 /// The closed list of kinds of field.
 #[derive(Debug, Clone, Copy, Serialize)]
@@ -88,7 +96,18 @@ impl Field {
     /// A number of the given quantity; `example` is an entry that is right.
     pub const fn number(name: &'static str, label: &'static str, quantity: Quantity, example: &'static str) -> Field {
         let kind = Kind::Number { quantity, min: 0.0, max: 0.0, why: "", negative: false };
-        Field { name, label, help: "", kind, default: "", example, required: false, shared: false, group: "" }
+        Field {
+            name,
+            label,
+            help: "",
+            kind,
+            default: "",
+            example,
+            required: false,
+            shared: false,
+            group: "",
+            file: None,
+        }
     }
     /// One of `options`.
     pub const fn choice(name: &'static str, label: &'static str, options: &'static [Opt], why: &'static str) -> Field {
@@ -97,7 +116,18 @@ impl Field {
             [] => "",
         };
         let kind = Kind::Choice { options, why };
-        Field { name, label, help: "", kind, default: "", example, required: false, shared: false, group: "" }
+        Field {
+            name,
+            label,
+            help: "",
+            kind,
+            default: "",
+            example,
+            required: false,
+            shared: false,
+            group: "",
+            file: None,
+        }
     }
     /// Words of at most `most` characters.
     pub const fn text(
@@ -119,6 +149,11 @@ impl Field {
         if let Kind::Table { columns, row, .. } = self.kind {
             self.kind = Kind::Table { columns, row, most: limit, why: reason };
         }
+        self
+    }
+    /// Reads files of this kind too.
+    pub const fn file(mut self, reader: FileReader) -> Field {
+        self.file = Some(reader);
         self
     }
     /// An entry that is right.

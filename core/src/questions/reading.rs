@@ -9,6 +9,7 @@ use crate::quantity::unit::Quantity;
 use crate::quantity::{Metres, Tilt};
 use crate::question::answer::{Doubt, State, Table};
 use crate::question::field::{Field, Opt};
+use crate::question::pencil::line;
 use crate::question::{Answer, Asked, Caution, Promised, Question, site};
 use crate::ray;
 use crate::sight::budget::{Budget, Part, Term};
@@ -159,7 +160,7 @@ fn answer(asked: &Asked, answer: &mut Answer) {
     results(asked, &worth, corrected, show, answer);
     answer.tables.push(side_by_side(&worth, show));
     answer.figure = Some(figure::draw(&worth, show));
-    working(asked, &worth, corrected, show, answer);
+    working(asked, &worth, corrected, answer);
     if worth.combined.half() >= worth.combined.bias.abs() && worth.combined.bias != 0.0 {
         answer.note("The doubt is larger than the correction: correcting does not make this reading better. Shorten the sight, balance it, raise the line, or observe both ways.");
     }
@@ -291,46 +292,29 @@ fn side_by_side(worth: &Worth, show: Show) -> Table {
     }
 }
 
-fn working(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mut Answer) {
+fn working(asked: &Asked, worth: &Worth, corrected: f64, answer: &mut Answer) {
     let (d, r, k) = (worth.distance.0, worth.radius.0, worth.air.k);
-    let mm = |si: f64| places(si * 1000.0, 3);
-    let curve = d * d / (2.0 * r);
+    let (curve, value) = (d * d / (2.0 * r), k.value.0);
+    let air = line("D = {m} m, R = {m} m, k = {k} (from {k} to {k}), ", &[d, r, value, k.low.0, k.high.0]);
     let lines = &mut answer.working;
-    lines.push(format!(
-        "D = {} m, R = {} m, k = {} (from {} to {}), {}",
-        places(d, 2),
-        places(r, 0),
-        show.k(k.value.0),
-        show.k(k.low.0),
-        show.k(k.high.0),
-        worth.air.source
+    lines.push(air + &worth.air.source);
+    lines.push(line(
+        "curvature = D² / 2R = {m} / {m} = {mm} mm (exact {mm} mm)",
+        &[d * d, 2.0 * r, curve, worth.curvature],
     ));
-    lines.push(format!(
-        "curvature = D² / 2R = {} / {} = {} mm (exact {} mm)",
-        places(d * d, 1),
-        places(2.0 * r, 0),
-        mm(curve),
-        mm(worth.curvature)
+    lines.push(line(
+        "refraction = k · curvature = {k} × {mm} = {mm} mm (exact {mm} mm)",
+        &[value, curve, value * curve, worth.refraction],
     ));
-    lines.push(format!(
-        "refraction = k · curvature = {} × {} = {} mm (exact {} mm)",
-        show.k(k.value.0),
-        mm(curve),
-        mm(k.value.0 * curve),
-        mm(worth.refraction)
+    lines.push(line(
+        "together = curvature − refraction = {mm} mm (exact {mm} mm)",
+        &[curve - value * curve, worth.combined.bias],
     ));
-    lines.push(format!(
-        "together = curvature − refraction = {} mm (exact {} mm)",
-        mm(curve - k.value.0 * curve),
-        mm(worth.combined.bias)
-    ));
-    lines.push(format!("doubt: from {} to {} mm about it", mm(-worth.combined.below), mm(worth.combined.above)));
+    lines.push(line("doubt: from {mm} to {mm} mm about it", &[-worth.combined.below, worth.combined.above]));
     if asked.choice(&APPLIED) == "raw" {
-        lines.push(format!(
-            "corrected = reading − together = {} − {} = {} m",
-            places(worth.reading, 5),
-            places(worth.combined.bias, 5),
-            places(corrected, 5)
+        lines.push(line(
+            "corrected = reading − together = {m} − {m} = {m} m",
+            &[worth.reading, worth.combined.bias, corrected],
         ));
     }
 }

@@ -1,5 +1,7 @@
 //! Over which distances an error stays inside its limit.
 
+use crate::order::sort;
+
 /// A stretch of distances, metres; `open` ends lie at the edge of what was searched.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Stretch {
@@ -29,7 +31,7 @@ pub fn places(low: f64, high: f64, at: &[f64]) -> Vec<f64> {
     let mut places: Vec<f64> = (0..STEPS).map(|i| low * libm::exp(ratio * f64::from(i))).collect();
     places.extend(at.iter().copied().filter(|d| *d > low && *d < high));
     places.push(high);
-    places.sort_by(f64::total_cmp);
+    sort(&mut places, |place| [*place, 0.0]);
     places
 }
 

@@ -29,7 +29,7 @@ fn walk(si: f64) -> String {
     match minutes {
         m if m < 1.0 => format!("about {paces} paces"),
         m if m < 2.0 => format!("about a minute's walk, {paces} paces"),
-        m if m < 90.0 => format!("about {m} minutes' walk, {paces} paces"),
+        m if m < 90.0 => format!("about {} minutes' walk, {paces} paces", significant(m, 2)),
         m => format!("about {} hours' walk", significant(m / 60.0, 2)),
     }
 }

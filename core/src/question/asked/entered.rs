@@ -60,8 +60,7 @@ pub fn written(number: &Number, unit: &Unit, bare: bool) -> String {
 fn split(quantity: Quantity, text: &str) -> (String, String) {
     let lower = text.to_ascii_lowercase();
     if quantity == Quantity::Gradient
-        && let Some((one, rest)) = lower.split_once(" in ")
-        && one.trim() == "1"
+        && let Some(rest) = lower.strip_prefix('1').and_then(|rest| rest.trim_start().strip_prefix("in "))
     {
         return (rest.trim().to_owned(), "1 in".to_owned());
     }

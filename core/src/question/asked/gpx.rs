@@ -24,6 +24,11 @@ pub struct Rows {
     pub notes: Vec<String>,
 }
 
+/// For [`Field::file`].
+pub fn reader(text: &str, columns: &[Field], most: usize) -> Option<Result<Rows, String>> {
+    looks_like(text).then(|| read(text, columns, most))
+}
+
 /// The text is a file of marks, whatever its encoding has become, and no table.
 pub fn looks_like(text: &str) -> bool {
     let mut letters = start(text).chars();

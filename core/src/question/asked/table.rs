@@ -1,7 +1,6 @@
 //! A table: what a person types row by row, or pastes whole from a spreadsheet or a file of separated values.
 
 use super::cell::{What, lower, missing, take};
-use super::gpx;
 use crate::quantity::unit::System;
 use crate::question::answer::{Cell, Fix, Problem};
 use crate::question::field::{Field, Kind};
@@ -73,13 +72,16 @@ pub fn read(
     let mut units: Vec<String> = columns.iter().map(|c| unit_of(c, system, &picked(c))).collect();
     let mut notes = vec![];
     let Kind::Table { row, most, why, .. } = field.kind else { return empty(units) };
-    let file = gpx::looks_like(text).then(|| gpx::read(text, columns, most)).transpose();
-    let file = match file {
+    let file = match field.file.and_then(|reader| reader(text, columns, most)).transpose() {
         Ok(file) => file,
         Err(message) => return refused(field, units, text, message),
     };
-    let mut lines = split(file.as_ref().map_or(text, |file| &file.text), columns.len(), &mut notes);
-    headings(&mut lines, columns, &mut units, &mut notes);
+    let text = file.as_ref().map_or(text, |file| &file.text);
+    let mut lines = split(text, columns.len(), &mut notes);
+    // A row that ends in a tab is one of the page's own: whatever words it holds, it is no line of headings.
+    if !text.lines().next().is_some_and(|line| line.ends_with('\t')) {
+        headings(&mut lines, columns, &mut units, &mut notes);
+    }
     notes = file.map_or(notes, |file| file.notes);
     let mut table = Table { rows: vec![], text: String::new(), units, echo: String::new(), problems: vec![], notes };
     if lines.len() > most {
@@ -92,17 +94,16 @@ pub fn read(
             table.text.push('\n');
         }
         table.text.push_str(&cells.join("\t"));
+        if line == 0 {
+            // So that it is taken for no headings, and read by tabs, when it is read again.
+            table.text.push('\t');
+        }
         let out = cells.first().is_some_and(|c| c.starts_with(STRUCK));
         struck += usize::from(out);
         if !out && cells.iter().any(|c| !c.is_empty()) {
             let row = table.read_row(field, columns, system, row, line, cells);
             table.rows.push(row);
         }
-    }
-    // Without a tab anywhere it would be read by other separators the next time.
-    if !table.text.is_empty() && !table.text.contains('\t') {
-        let end = table.text.find('\n').unwrap_or(table.text.len());
-        table.text.insert(end, '\t');
     }
     if table.problems.len() > TOLD {
         let more = table.problems.len() - TOLD;
@@ -196,14 +197,16 @@ fn unit_of(column: &Field, system: System, picked: &str) -> String {
 
 /// Lines of cells, whatever separates them: tabs, else semicolons, else commas, else spaces.
 fn split(text: &str, columns: usize, notes: &mut Vec<String>) -> Vec<Vec<String>> {
-    let text = text.replace("\r\n", "\n").replace('\r', "\n");
-    let text = text.trim_end_matches(['\n', ' ']).trim_start_matches('\n');
+    let text = text.replace('\r', if text.contains('\n') { "" } else { "\n" });
+    // Asked of the whole text: while its first cell is filled, a table has its only tab at the end.
+    let tabs = text.contains('\t');
+    let text = text.trim_end();
     if text.is_empty() {
         return vec![];
     }
     let first = text.lines().find(|l| !l.trim().is_empty()).unwrap_or("");
     let (separator, name) = match () {
-        () if text.contains('\t') || columns < 2 => ('\t', ""),
+        () if tabs || columns < 2 => ('\t', ""),
         () if text.contains(';') => (';', "semicolons"),
         () if text.contains(',') && first.matches(',').count() < columns => (',', "commas"),
         () if first.trim().contains(' ') && first.split_whitespace().count() <= columns => (' ', "spaces"),
@@ -216,8 +219,7 @@ fn split(text: &str, columns: usize, notes: &mut Vec<String>) -> Vec<Vec<String>
     while lines.last().is_some_and(Vec::is_empty) {
         lines.pop();
     }
-    let empty = lines.iter().take_while(|line| line.is_empty()).count();
-    lines.split_off(empty)
+    lines
 }
 
 /// The cells of a line. One in double quotes may hold the separator, and a quote written twice (RFC 4180).
@@ -261,10 +263,7 @@ fn headings(lines: &mut Vec<Vec<String>>, columns: &[Field], units: &mut [String
     let Some((first, order)) = lines.first().filter(|l| l.len() > 1).and_then(|l| Some((l.clone(), names(l)?))) else {
         return;
     };
-    // What is left must begin with a row, or it would be taken for headings when it is read again.
-    while lines.first().is_some_and(|line| line.is_empty() || (line.len() > 1 && names(line).is_some())) {
-        lines.remove(0);
-    }
+    lines.remove(0);
     for (heading, at) in first.iter().zip(&order) {
         let unit = heading.rsplit([' ', '(', '[', ',']).next().map(|u| u.trim_end_matches([')', ']']));
         if let (Some(Kind::Number { quantity, .. }), Some(slot)) =

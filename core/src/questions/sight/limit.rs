@@ -3,6 +3,7 @@
 use super::case::{Case, Count, SEARCH};
 use super::{CLASS, CLEARANCE, INSTRUMENT, SLOPE, STAFF};
 use crate::limits;
+use crate::order::sort;
 use crate::quantity::Metres;
 use crate::question::{Asked, site};
 use crate::ray;
@@ -74,7 +75,7 @@ pub fn all(asked: &Asked, case: &Case) -> Vec<Limit> {
     for (term, name) in TERMS {
         limits.push(optical(name, Count::One(term), format!("by itself it reaches {allowed}"), true));
     }
-    limits.sort_by(|a, b| a.alone.cmp(&b.alone).then(a.rank().total_cmp(&b.rank())));
+    sort(&mut limits, |l| [f64::from(u8::from(l.alone)), l.rank()]);
     limits
 }
 
