@@ -120,9 +120,9 @@ fn fix(stage: &Stage) -> Result<()> {
     browser.tap("#field-k")?;
     browser.keys("0.07")?;
     browser.key(Key::Enter)?;
-    browser.wait("document.querySelector('#asks')?.checkVisibility()")?;
-    browser.tap("#asks button")?;
+    browser.wait("document.querySelector('.ask:not([hidden])')?.checkVisibility()")?;
+    browser.tap(".ask:not([hidden]) button")?;
     browser.wait("document.querySelector('[name=\"k.unit\"]').value === 'm'")?;
-    browser.wait("!document.querySelector('#asks').checkVisibility()")?;
+    browser.wait("!document.querySelector('.ask:not([hidden])')")?;
     stage.decides("sight", "distance=60+m&tolerance=3+mm&k=0.07&k.unit=m").map(drop)
 }

@@ -12,6 +12,11 @@ import { cellsOf, heading, isStruck, linesOf, shown } from "./rows.js";
 /** @typedef {import("./core.js").Fix} Fix */
 /** @typedef {import("./core.js").Cell} Cell */
 
+const PAUSE_MS = 80; // between keys: the decision is there at once, what it rests on when the keys pause
+let resting = 0;
+let rest = () => {};
+let restOf = ""; // whose it is
+
 /**
  * @param {Question} question @param {Answer} answer
  * @param {Problem[]} problems those that may be shown now
@@ -20,14 +25,37 @@ import { cellsOf, heading, isStruck, linesOf, shown } from "./rows.js";
 export function showAnswer(question, answer, problems, act) {
   showVerdict(answer);
   showProblems(question, problems, act);
+  clearTimeout(resting);
+  // The same entry has the same answer: what stands there already keeps its place, and the keyboard its own.
+  const of = `${question.id}?${answer.entry}`;
+  if (of === restOf) {
+    rest = () => {};
+    return;
+  }
+  rest = () => {
+    rest = () => {};
+    restOf = of;
+    showRest(answer, act.fix);
+  };
+  if (byId("form").contains(document.activeElement)) resting = setTimeout(() => rest(), PAUSE_MS);
+  else rest();
+}
+
+/** Shows now what waits for a pause: before it is printed, say. */
+export function showAll() {
+  clearTimeout(resting);
+  rest();
+}
+
+/** What the decision rests on. @param {Answer} answer @param {(fix: Fix) => void} fix */
+function showRest(answer, fix) {
   showList("results", "dl", answer.results.map(result));
   const behind = answer.tables.filter((each) => each.name === answer.figure?.table);
   showList("tables", "", answer.tables.filter((each) => !behind.includes(each)).map(table));
   showFigure(answer, behind);
   showList("working", "ol", answer.working.map(line));
-  const asked = answer.notes.filter((note) => note.fixes.length > 0);
-  showList("asks", "ul", asked.map((each) => noteItem(each, act.fix)));
-  showList("notes", "ul", answer.notes.filter((note) => !asked.includes(note)).map((each) => noteItem(each, act.fix)));
+  const told = answer.notes.filter((note) => note.fixes.length === 0); // what is asked back stands at its field
+  showList("notes", "ul", told.map((each) => noteItem(each, fix)));
 }
 
 /** What stays the same for every answer of a question. @param {Question} question */

@@ -1,6 +1,6 @@
 // Start, addresses, and the entry of the question in view. What is asked and answered comes from the core alone.
 import init, { ask, catalogue } from "./core.js";
-import { showAnswer, showEntered, showStanding, spoken } from "./answer.js";
+import { showAll, showAnswer, showEntered, showStanding, spoken } from "./answer.js";
 import { byId, copy, download, fill, say, within } from "./dom.js";
 import { columnsOf, infoOf, namesIn, unitName, unitsOf, usualUnit } from "./field.js";
 import { buildForm } from "./form.js";
@@ -19,6 +19,7 @@ const STEPS_KEPT = 50;
 const STEPS_SIZE = 1_000_000; // characters of all of them: each key writes them to disk
 const SLOW_MS = 8; // half a frame: an answer that takes longer waits until the person stops typing
 const PAUSE_MS = 150;
+const STORE_MS = 4000; // a store that does not open by then may not open at all
 const SETTLED_MS = 1000; // then an answer is read out and the address follows
 
 /** @type {Catalogue} */
@@ -146,7 +147,7 @@ function refresh() {
   const typing = document.activeElement?.getAttribute("name") ?? ""; // nothing is wrong yet with what is being typed
   const shown = problems.filter(({ field, cell }) =>
     (field !== typing || visited.has(typing)) && (!cell || form?.ripe(field, cell)));
-  form?.tell(answer.read, shown);
+  form?.tell(answer.read, shown, answer.notes.filter((note) => note.fixes.length > 0));
   showAnswer(question, answer, shown, { fix, focus: (name, cell) => form?.focus(name, cell) });
   for (const list of /** @type {const} */ (["undo", "redo"])) {
     /** @type {HTMLButtonElement} */ (byId(list)).disabled = own()[list].length === 0;
@@ -313,6 +314,7 @@ function connect() {
   }
   addEventListener("hashchange", route);
   addEventListener("beforeprint", () => {
+    showAll();
     if (question) showEntered(question, entry, answer);
     byId("printed").textContent = new Date().toLocaleString(undefined, { dateStyle: "long", timeStyle: "long" });
     for (const details of byId("question").querySelectorAll("details")) details.open = true;
@@ -383,7 +385,14 @@ async function start() {
   });
   await loadCore();
   all = catalogue();
-  await store;
+  const late = await Promise.race([store, new Promise((done) => setTimeout(() => done("late"), STORE_MS))]) === "late";
+  if (late) {
+    say("What was saved on this device cannot be read yet. You can work; nothing that was saved is lost.");
+    store.then(() => { // with what was typed meanwhile on top
+      showAsides();
+      if (question) show({ ...keptEntry(question), ...entry });
+    });
+  }
   showAsides();
   showHome();
   route();

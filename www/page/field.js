@@ -1,5 +1,5 @@
 // What every kind of field on the page shares: how its texts are named, its words, its list of units, its ± key.
-import { within } from "./dom.js";
+import { copy, within } from "./dom.js";
 
 /** @typedef {import("./core.js").Field} Field */
 /** @typedef {import("./core.js").Fix} Fix */
@@ -78,6 +78,7 @@ export function dress(root, field, control) {
   help.id = `${id}-help`;
   within(root, ".error p").id = `${id}-error`;
   within(root, ".echo").id = `${id}-echo`;
+  root.append(copy("t-ask"));
   control.setAttribute("aria-describedby", `${id}-help ${id}-error ${id}-echo`);
   if (label instanceof HTMLLabelElement) {
     control.id = id;

@@ -201,8 +201,9 @@ export function buildForm(fields, around, open, onOpen) {
     /**
      * Shows how each field was read, and what is wrong with it where that may be said.
      * @param {Read[]} read @param {Problem[]} problems
+     * @param {import("./core.js").Note[]} asks what is asked back
      */
-    tell(read, problems) {
+    tell(read, problems, asks) {
       for (const { field, root, target, cells } of boxes.values()) {
         const mine = problems.filter((each) => each.field === field.name);
         cells?.tell(mine.filter((each) => each.cell));
@@ -214,7 +215,12 @@ export function buildForm(fields, around, open, onOpen) {
         if (target().matches("[type=text][name]")) target().setAttribute("aria-invalid", String(Boolean(problem)));
         root.classList.toggle("wrong", Boolean(problem));
         within(root, ".echo").textContent = read.find((each) => each.field === field.name)?.echo ?? "";
-        const details = mine.length > 0 && root.closest("details");
+        const asked = asks.find((each) => each.fixes[0]?.field === field.name);
+        const ask = within(root, ".ask");
+        ask.hidden = !asked;
+        within(ask, "p").textContent = asked?.text ?? "";
+        fixKeys(within(ask, ".keys"), asked?.fixes ?? [], around.fix);
+        const details = (mine.length > 0 || asked) && root.closest("details");
         if (details) details.open = true;
       }
     },

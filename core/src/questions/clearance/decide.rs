@@ -21,7 +21,12 @@ pub fn decide(asked: &Asked, case: &Case, answer: &mut Answer) {
         (false, false) => ("It may clear", State::Doubtful),
     };
     let half = case.half(case.day.worst);
-    verdict.number = format!("by {}", show.metres(case.day.least, half));
+    let least = show.metres(case.day.least.abs(), half);
+    verdict.number = match verdict.state {
+        State::Within => format!("by {least}"),
+        State::Beyond if case.day.least < 0.0 => format!("by {least}"),
+        _ => format!("least {}", show.metres(case.day.least, half)),
+    };
     let worst = case.worst().map_or(String::new(), |p| {
         let at = show.distance(p.at, Round::Near);
         if p.name.is_empty() { format!("at {at}") } else { format!("at {}, {at}", p.name) }
