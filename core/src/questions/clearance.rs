@@ -104,7 +104,7 @@ const COVER: Field = Field::number("cover", "Cover on it", Quantity::Height, "18
 const MORE: &str = "More of this point";
 const INCLUDED: Field = Field::choice(
     "included",
-    "Cover already in the ground height?",
+    "Cover included?",
     &[Opt { value: "no", label: "no" }, Opt { value: "yes", label: "yes: a surface model" }],
     "it is or it is not",
 )
