@@ -37,7 +37,8 @@ export function showAnswer(question, answer, problems, act) {
     restOf = of;
     showRest(answer, act.fix);
   };
-  if (byId("form").contains(document.activeElement)) resting = setTimeout(() => rest(), PAUSE_MS);
+  const starting = !document.documentElement.dataset.ready; // the first picture comes before what can wait
+  if (starting || byId("form").contains(document.activeElement)) resting = setTimeout(() => rest(), PAUSE_MS);
   else rest();
 }
 
