@@ -34,7 +34,7 @@ pub struct Question {
     pub cautions: &'static [Caution],
     /// Where the formulas and figures come from.
     pub sources: &'static [&'static str],
-    /// Computes the answer from what was read.
+    /// Computes the answer from what was read, which holds no problem.
     #[serde(skip)]
     #[cfg_attr(feature = "ts", tsify(skip))]
     pub answer: fn(&Asked, &mut Answer),
@@ -50,6 +50,13 @@ pub struct Promised {
     pub label: &'static str,
     /// What the number means, with its sign.
     pub meaning: &'static str,
+}
+
+impl Promised {
+    /// Name at the boundary, label on the page, meaning.
+    pub const fn new(name: &'static str, label: &'static str, meaning: &'static str) -> Promised {
+        Promised { name, label, meaning }
+    }
 }
 
 /// A danger of the work and who governs it.
@@ -93,6 +100,10 @@ pub fn ask(id: &str, entry: &str) -> Option<Answer> {
     let question = crate::questions::ALL.iter().find(|q| q.id == id)?;
     let asked = Asked::read(question, entry);
     let mut answer = Answer::new(question, &asked);
-    (question.answer)(&asked, &mut answer);
+    site::doubt_k(&asked, &mut answer);
+    match asked.problems.first() {
+        Some(first) => answer.not_known(first.message.clone()),
+        None => (question.answer)(&asked, &mut answer),
+    }
     Some(answer)
 }

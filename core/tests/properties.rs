@@ -14,31 +14,14 @@ use farstaff::sight::{SightDoubt, imbalance, reach};
 
 #[path = "properties/horizon.rs"]
 mod horizons;
+#[path = "common/random.rs"]
+mod random;
+use random::Random;
 
 const R: Metres = Metres(6_371_000.0);
 const SYSTEMS: [System; 3] = [System::Metric, System::Foot, System::SurveyFoot];
 
-/// SplitMix64: Steele, Lea & Flood, Fast Splittable Pseudorandom Number Generators (2014), constants from memory.
-struct Random(u64);
-
 impl Random {
-    fn next(&mut self) -> u64 {
-        self.0 = self.0.wrapping_add(0x9E37_79B9_7F4A_7C15);
-        let mixed = (self.0 ^ (self.0 >> 30)).wrapping_mul(0xBF58_476D_1CE4_E5B9);
-        let mixed = (mixed ^ (mixed >> 27)).wrapping_mul(0x94D0_49BB_1331_11EB);
-        mixed ^ (mixed >> 31)
-    }
-    fn below(&mut self, n: usize) -> usize {
-        usize::try_from(self.next() % u64::try_from(n).unwrap()).unwrap()
-    }
-    /// 0 to 1.
-    fn share(&mut self) -> f64 {
-        f64::from(u32::try_from(self.next() >> 32).unwrap()) / f64::from(u32::MAX)
-    }
-    /// Evenly in the logarithm.
-    fn spread(&mut self, low: f64, high: f64) -> f64 {
-        low * libm::exp(libm::log(high / low) * self.share())
-    }
     fn sight(&mut self) -> Metres {
         Metres(self.spread(1.0, 200e3))
     }

@@ -176,6 +176,9 @@ pub struct Read {
     pub assumed: bool,
 }
 
+/// The verdict where nothing is decided.
+const NOT_KNOWN: &str = "Not enough is known";
+
 impl Answer {
     /// An answer in which nothing is decided yet, with what `asked` found.
     pub fn new(question: &Question, asked: &Asked) -> Answer {
@@ -205,6 +208,10 @@ impl Answer {
     ) {
         let Promised { name, label, .. } = *promise;
         self.results.push(Outcome { name, label, value, text: shown.text, unit: shown.unit, doubt, meaning });
+    }
+    /// Decides nothing, and says why.
+    pub fn not_known(&mut self, why: String) {
+        self.verdict = Verdict { word: NOT_KNOWN, number: String::new(), sentence: why, state: State::Unknown };
     }
     /// Adds a note.
     pub fn note(&mut self, text: impl Into<String>) {

@@ -93,21 +93,13 @@ pub struct Opt {
 }
 
 impl Field {
+    const fn plain(name: &'static str, label: &'static str, kind: Kind, example: &'static str) -> Field {
+        let (help, default, group) = ("", "", "");
+        Field { name, label, help, kind, default, example, required: false, shared: false, group, file: None }
+    }
     /// A number of the given quantity; `example` is an entry that is right.
     pub const fn number(name: &'static str, label: &'static str, quantity: Quantity, example: &'static str) -> Field {
-        let kind = Kind::Number { quantity, min: 0.0, max: 0.0, why: "", negative: false };
-        Field {
-            name,
-            label,
-            help: "",
-            kind,
-            default: "",
-            example,
-            required: false,
-            shared: false,
-            group: "",
-            file: None,
-        }
+        Field::plain(name, label, Kind::Number { quantity, min: 0.0, max: 0.0, why: "", negative: false }, example)
     }
     /// One of `options`.
     pub const fn choice(name: &'static str, label: &'static str, options: &'static [Opt], why: &'static str) -> Field {
@@ -115,19 +107,7 @@ impl Field {
             [first, ..] => first.value,
             [] => "",
         };
-        let kind = Kind::Choice { options, why };
-        Field {
-            name,
-            label,
-            help: "",
-            kind,
-            default: "",
-            example,
-            required: false,
-            shared: false,
-            group: "",
-            file: None,
-        }
+        Field::plain(name, label, Kind::Choice { options, why }, example)
     }
     /// Words of at most `most` characters.
     pub const fn text(
@@ -137,12 +117,11 @@ impl Field {
         why: &'static str,
         example: &'static str,
     ) -> Field {
-        Field { kind: Kind::Text { most, why }, ..Field::choice(name, label, &[], "") }.example(example)
+        Field::plain(name, label, Kind::Text { most, why }, example)
     }
     /// Rows of `columns`, each called `row`.
     pub const fn table(name: &'static str, label: &'static str, columns: &'static [Field], row: &'static str) -> Field {
-        let kind = Kind::Table { columns, row, most: 0, why: "" };
-        Field { kind, ..Field::choice(name, label, &[], "") }
+        Field::plain(name, label, Kind::Table { columns, row, most: 0, why: "" }, "")
     }
     /// Most rows of a table, and why no more.
     pub const fn rows(mut self, limit: usize, reason: &'static str) -> Field {

@@ -15,8 +15,7 @@ pub const AIR: &str = "The air";
 /// Heading of the fields that set the rule.
 pub const RULE: &str = "The rule";
 
-/// Below this height a line is near the ground, where k above 1 is ordinary: the guide reaches it under a clear night sky
-/// at any height, by day at none above.
+/// Below this height a line is near the ground, where k above 1 is ordinary by day too: the guide's range holds it there.
 const NEAR_GROUND: f64 = 3.0;
 
 /// Which unit a bare number has.
@@ -76,19 +75,28 @@ pub const SKY: Field = Field::choice(
 .default("unknown")
 .shared();
 
+/// A coefficient of refraction.
+pub const fn coefficient(name: &'static str, label: &'static str, example: &'static str) -> Field {
+    let field = Field::number(name, label, Quantity::Refraction, example);
+    field.range(-100.0, 100.0, "beyond it no line of sight has been reported").under(AIR)
+}
+
+/// The doubt of one.
+pub const fn coefficient_doubt(name: &'static str, label: &'static str, example: &'static str) -> Field {
+    let field = Field::number(name, label, Quantity::Refraction, example);
+    field.range(0.0, 100.0, "it is a half-width, and as wide as k itself can be").under(AIR)
+}
+
 /// k, where it is known better than from sky and height.
-pub const K: Field = Field::number("k", "Coefficient of refraction k", Quantity::Refraction, "0.13")
-    .range(-100.0, 100.0, "beyond it no line of sight has been reported")
+pub const K: Field = coefficient("k", "Coefficient of refraction k", "0.13")
     .help("Overrules sky and height. k is the earth's radius over the ray's; books that print m mean half of it.")
     .shared()
     .under(AIR);
 
 /// Doubt of k.
-pub const K_DOUBT: Field = Field::number("k_doubt", "Doubt of k", Quantity::Refraction, "0.5")
-    .range(0.0, 100.0, "it is a half-width, and as wide as k itself can be")
+pub const K_DOUBT: Field = coefficient_doubt("k_doubt", "Doubt of k", "0.5")
     .help("Half of the range that holds k 95 times in 100. Left empty: as wide as the guide has it for this sky and height.")
-    .shared()
-    .under(AIR);
+    .shared();
 
 /// Radius of the earth.
 pub const RADIUS: Field = Field::number("radius", "Radius of the earth", Quantity::Radius, "6371 km")
@@ -134,16 +142,19 @@ pub fn air(asked: &Asked, sky: Sky) -> AirInForce {
     in_force(asked, guide::k(Metres(height), sky), &words)
 }
 
+/// Value and half-width as entered; each that was not, by `rule`.
+pub fn entered_or(value: Option<f64>, half: Option<f64>, rule: KRange) -> KRange {
+    let value = value.unwrap_or(rule.value.0);
+    let below = half.unwrap_or(rule.value.0 - rule.low.0);
+    let above = half.unwrap_or(rule.high.0 - rule.value.0);
+    KRange { value: Coefficient(value), low: Coefficient(value - below), high: Coefficient(value + above) }
+}
+
 /// The k in force: as entered, else by a rule that `words` name.
 pub fn in_force(asked: &Asked, rule: KRange, words: &str) -> AirInForce {
-    let given = asked.number(&K);
-    let value = given.unwrap_or(rule.value.0);
-    let (below, above) = match asked.number(&K_DOUBT) {
-        Some(half) => (half, half),
-        None => (rule.value.0 - rule.low.0, rule.high.0 - rule.value.0),
-    };
-    let k = KRange { value: Coefficient(value), low: Coefficient(value - below), high: Coefficient(value + above) };
-    let source = match (given, asked.number(&K_DOUBT)) {
+    let (given, half) = (asked.number(&K), asked.number(&K_DOUBT));
+    let k = entered_or(given, half, rule);
+    let source = match (given, half) {
         (Some(_), Some(_)) => "as entered".to_owned(),
         (Some(_), None) => format!("as entered, its doubt from {words}"),
         (None, Some(_)) => format!("from {words}, its doubt as entered"),
@@ -166,13 +177,17 @@ pub fn with_doubt(error: &Estimate, show: Show) -> (Shown, Doubt) {
     (show.small_in(&unit, error.bias, grain), Doubt { value: half, text: range })
 }
 
-/// The result that says which k is in force.
-pub fn k_result(promise: &Promised, air: &AirInForce, show: Show, answer: &mut Answer) {
+/// Which k is in force.
+pub const K_IN_FORCE: Promised =
+    Promised::new("k", "k in force", "coefficient of refraction reckoned with, and its range");
+
+/// The result that says so.
+pub fn k_result(air: &AirInForce, show: Show, answer: &mut Answer) {
     let k = air.k;
     let half = (k.value.0 - k.low.0).max(k.high.0 - k.value.0);
     let doubt = Doubt { value: half, text: format!("from {} to {}", show.k(k.low.0), show.k(k.high.0)) };
     let shown = Shown { text: show.k(k.value.0), unit: "" };
-    answer.result(promise, Some(k.value.0), shown, Some(doubt), air.source.clone());
+    answer.result(&K_IN_FORCE, Some(k.value.0), shown, Some(doubt), air.source.clone());
 }
 
 /// The radius in force and its doubt as a share: none where it was entered.

@@ -155,14 +155,10 @@ const CHANCE: Field = Field::number("chance", "Chance wanted", Quantity::Share, 
     .help("That the whole line clears.")
     .default("95 %")
     .under(STATIONS);
-const NIGHT_K: Field = Field::number("night_k", "k by night", Quantity::Refraction, "0.3")
-    .range(-100.0, 100.0, "beyond it no line of sight has been reported")
-    .help("Left empty: by our guide for a clear calm night, at the height of the line.")
-    .under(site::AIR);
-const NIGHT_K_DOUBT: Field = Field::number("night_k_doubt", "Doubt of k by night", Quantity::Refraction, "0.15")
-    .range(0.0, 100.0, "it is a half-width, and as wide as k itself can be")
-    .help("Left empty: as wide as the guide has it.")
-    .under(site::AIR);
+const NIGHT_K: Field = site::coefficient("night_k", "k by night", "0.3")
+    .help("Left empty: by our guide for a clear calm night, at the height of the line.");
+const NIGHT_K_DOUBT: Field = site::coefficient_doubt("night_k_doubt", "Doubt of k by night", "0.15")
+    .help("Left empty: as wide as the guide has it.");
 const DOUBTS: &str = "Doubts";
 const GROUND_DOUBT: Field = Field::number("ground_doubt", "Doubt of the ground heights", Quantity::Height, "3 m")
     .range(0.0, 500.0, "it is a half-width")
@@ -181,50 +177,40 @@ const GROUND_SHARED: Field =
         .default("50 %")
         .under(DOUBTS);
 
-const fn promise(name: &'static str, label: &'static str, meaning: &'static str) -> Promised {
-    Promised { name, label, meaning }
-}
-const LEAST: Promised = promise(
+const LEAST: Promised = Promised::new(
     "least",
     "Least clearance",
     "height of the line by day, as expected, over the point that leaves least to spare; − where it is blocked",
 );
-const LEAST_AT: Promised = promise("least_at", "Worst point", "distance from A of the point with the least clearance");
-const CHANCE_DAY: Promised = promise("chance_day", "Chance by day", "that the whole line clears what is wanted");
+const LEAST_AT: Promised =
+    Promised::new("least_at", "Worst point", "distance from A of the point with the least clearance");
+const CHANCE_DAY: Promised = Promised::new("chance_day", "Chance by day", "that the whole line clears what is wanted");
 const CHANCE_NIGHT: Promised =
-    promise("chance_night", "Chance by night", "that the whole line clears what is wanted on a clear calm night");
+    Promised::new("chance_night", "Chance by night", "that the whole line clears what is wanted on a clear calm night");
 const K_GRAZING: Promised =
-    promise("k_grazing", "k that just does", "the line clears what is wanted where k is greater");
+    Promised::new("k_grazing", "k that just does", "the line clears what is wanted where k is greater");
 const RAISE_A: Promised =
-    promise("raise_a", "Raise A by", "with B as it is, for the clearance wanted, as expected by day");
+    Promised::new("raise_a", "Raise A by", "with B as it is, for the clearance wanted, as expected by day");
 const RAISE_B: Promised =
-    promise("raise_b", "Raise B by", "with A as it is, for the clearance wanted, as expected by day");
+    Promised::new("raise_b", "Raise B by", "with A as it is, for the clearance wanted, as expected by day");
 const RAISE_BOTH: Promised =
-    promise("raise_both", "Raise both by", "each by so much, for the clearance wanted, as expected by day");
-const DOUBT: Promised = promise("doubt", "Doubt of the least clearance", "95 % half-width on the side that may block");
-const SHARE_GROUND: Promised = promise(
+    Promised::new("raise_both", "Raise both by", "each by so much, for the clearance wanted, as expected by day");
+const DOUBT: Promised =
+    Promised::new("doubt", "Doubt of the least clearance", "95 % half-width on the side that may block");
+const SHARE_GROUND: Promised = Promised::new(
     "share_ground",
     "Of that, ground",
     "share of the square of the doubt that better ground heights would take away",
 );
 const SHARE_COVER: Promised =
-    promise("share_cover", "Of that, cover", "share that better heights of trees and buildings would take away");
+    Promised::new("share_cover", "Of that, cover", "share that better heights of trees and buildings would take away");
 const SHARE_K: Promised =
-    promise("share_k", "Of that, air", "share that only another time of day or better k would take away");
+    Promised::new("share_k", "Of that, air", "share that only another time of day or better k would take away");
 
 fn answer(asked: &Asked, answer: &mut Answer) {
-    site::doubt_k(asked, answer);
-    if answer.problems.is_empty() {
-        case::check(asked, answer);
-    }
-    if let Some(first) = answer.problems.first() {
-        answer.verdict.word = decide::NOT_KNOWN;
-        answer.verdict.sentence = first.message.clone();
-        return;
-    }
+    case::check(asked, answer);
     let Some(case) = Case::of(asked) else {
-        answer.verdict.word = decide::NOT_KNOWN;
-        answer.verdict.sentence = "No ray joins the two stations at this k, or no point lies between them.".to_owned();
+        answer.not_known("No ray joins the two stations at this k, or no point lies between them.".to_owned());
         return;
     };
     decide::decide(asked, &case, answer);

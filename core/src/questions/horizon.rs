@@ -14,7 +14,7 @@ pub const QUESTION: Question = Question {
     phrase: "How far is the horizon, and what is hidden?",
     about: "Heights of eye and target: whether it shows, and how far off it is raised, by day and by night.",
     fields: &[EYE, TARGET, DISTANCE, SURFACE, site::SKY, SHORE, site::K, site::K_DOUBT, site::RADIUS, site::UNITS],
-    results: &[HORIZON, LINE, DIP, HIDDEN, RANGE, K_USED],
+    results: &[HORIZON, LINE, DIP, HIDDEN, RANGE, site::K_IN_FORCE],
     cautions: &[
         Caution {
             text: "Not for navigation.",
@@ -64,42 +64,24 @@ const SHORE: Field = Field::number("shore_distance", "Distance of the shore", Qu
     .range(site::NEAREST, FAR, FAR_OFF)
     .help("Where land is nearer than the horizon: the dip is then that of its waterline.");
 
-const HORIZON: Promised = Promised {
-    name: "horizon_distance",
-    label: "Horizon",
-    meaning: "where the line of sight grazes the surface, along the surface",
-};
-const LINE: Promised =
-    Promised { name: "horizon_line", label: "Horizon, straight line", meaning: "from the eye to that place" };
-const DIP: Promised = Promised {
-    name: "dip",
-    label: "Dip",
-    meaning: "how far the line to the horizon, or to a nearer shore, points below the horizontal",
-};
-const HIDDEN: Promised = Promised {
-    name: "hidden",
-    label: "Hidden height",
-    meaning: "what stands lower than this at the target's distance is below the horizon",
-};
-const RANGE: Promised = Promised {
-    name: "visible_range",
-    label: "Raised at",
-    meaning: "the distance at which the top of the target comes over the horizon",
-};
-const K_USED: Promised =
-    Promised { name: "k", label: "k in force", meaning: "coefficient of refraction reckoned with, and its range" };
+const HORIZON: Promised =
+    Promised::new("horizon_distance", "Horizon", "where the line of sight grazes the surface, along the surface");
+const LINE: Promised = Promised::new("horizon_line", "Horizon, straight line", "from the eye to that place");
+const DIP: Promised =
+    Promised::new("dip", "Dip", "how far the line to the horizon, or to a nearer shore, points below the horizontal");
+const HIDDEN: Promised = Promised::new(
+    "hidden",
+    "Hidden height",
+    "what stands lower than this at the target's distance is below the horizon",
+);
+const RANGE: Promised =
+    Promised::new("visible_range", "Raised at", "the distance at which the top of the target comes over the horizon");
 
 fn answer(asked: &Asked, answer: &mut Answer) {
-    site::doubt_k(asked, answer);
-    if let Some(first) = asked.problems.first() {
-        answer.verdict.word = "Not enough is known";
-        answer.verdict.sentence = first.message.clone();
-        return;
-    }
     let case = Case::of(asked);
     sheet::decide(&case, answer);
     sheet::fill(&case, answer);
-    site::k_result(&K_USED, &case.air, case.show, answer);
+    site::k_result(&case.air, case.show, answer);
     answer.tables.push(sheet::airs(&case));
     answer.working = sheet::working(&case);
     answer.figure = figure::draw(&case);

@@ -30,7 +30,7 @@ pub const QUESTION: Question = Question {
         DISTANCE_DOUBT,
         site::UNITS,
     ],
-    results: &[CORRECTED, COMBINED, DOUBT, CURVATURE, REFRACTION, K_USED],
+    results: &[CORRECTED, COMBINED, DOUBT, CURVATURE, REFRACTION, site::K_IN_FORCE],
     cautions: &[
         Caution {
             text: "Never point a telescope at or near the sun: it blinds at once.",
@@ -70,30 +70,24 @@ const DISTANCE_DOUBT: Field = site::DISTANCE_DOUBT
     .help("By default the distance is taken as exact. Pacing is good to a twentieth, that is 5 % (common practice, no source).")
     .default("0 %");
 
-const CORRECTED: Promised = Promised {
-    name: "corrected",
-    label: "Corrected reading",
-    meaning: "what the staff would read on a level surface through the instrument",
-};
-const COMBINED: Promised =
-    Promised { name: "combined", label: "Curvature and refraction", meaning: "what the reading is too large by" };
-const DOUBT: Promised = Promised {
-    name: "doubt",
-    label: "Doubt of the correction",
-    meaning: "95 % half-width; the greater side where the two differ. The reading's own doubt is not in it",
-};
-const CURVATURE: Promised = Promised {
-    name: "curvature",
-    label: "Curvature",
-    meaning: "how far the level surface lies below the horizontal line at the staff",
-};
-const REFRACTION: Promised = Promised {
-    name: "refraction",
-    label: "Refraction",
-    meaning: "how far the line of sight lies below the horizontal line at the staff; − where it lies above",
-};
-const K_USED: Promised =
-    Promised { name: "k", label: "k in force", meaning: "coefficient of refraction reckoned with, and its range" };
+const CORRECTED: Promised = Promised::new(
+    "corrected",
+    "Corrected reading",
+    "what the staff would read on a level surface through the instrument",
+);
+const COMBINED: Promised = Promised::new("combined", "Curvature and refraction", "what the reading is too large by");
+const DOUBT: Promised = Promised::new(
+    "doubt",
+    "Doubt of the correction",
+    "95 % half-width; the greater side where the two differ. The reading's own doubt is not in it",
+);
+const CURVATURE: Promised =
+    Promised::new("curvature", "Curvature", "how far the level surface lies below the horizontal line at the staff");
+const REFRACTION: Promised = Promised::new(
+    "refraction",
+    "Refraction",
+    "how far the line of sight lies below the horizontal line at the staff; − where it lies above",
+);
 
 /// What the entry comes to.
 struct Worth {
@@ -140,19 +134,12 @@ impl Worth {
 }
 
 fn answer(asked: &Asked, answer: &mut Answer) {
-    site::doubt_k(asked, answer);
-    if let Some(first) = asked.problems.first() {
-        answer.verdict.word = NOT_KNOWN;
-        answer.verdict.sentence = first.message.clone();
-        return;
-    }
     let show = asked.show();
     let Some(worth) = Worth::of(asked) else {
-        answer.verdict.word = NOT_KNOWN;
-        answer.verdict.sentence = format!(
+        answer.not_known(format!(
             "At k = {} the line has turned upright before it comes so far: no staff is seen.",
             asked.text(&site::K)
-        );
+        ));
         return;
     };
     let corrected = worth.reading - worth.combined.bias;
@@ -165,8 +152,6 @@ fn answer(asked: &Asked, answer: &mut Answer) {
         answer.note("The doubt is larger than the correction: correcting does not make this reading better. Shorten the sight, balance it, raise the line, or observe both ways.");
     }
 }
-
-const NOT_KNOWN: &str = "Not enough is known";
 
 fn verdict(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mut Answer) {
     let bias = worth.combined.bias;
@@ -200,13 +185,10 @@ fn verdict(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mu
             verdict.state = State::Within;
             verdict.sentence = format!("Corrected {}. What stays in doubt is {doubt}.", show.height(corrected));
         }
-        _ => {
-            verdict.word = NOT_KNOWN;
-            verdict.sentence = format!(
-                "If it is as read, it is {size} too {}; if it is corrected already, leave it. Look what the instrument takes off by itself.",
-                if bias < 0.0 { "small" } else { "large" }
-            );
-        }
+        _ => answer.not_known(format!(
+            "If it is as read, it is {size} too {}; if it is corrected already, leave it. Look what the instrument takes off by itself.",
+            if bias < 0.0 { "small" } else { "large" }
+        )),
     }
 }
 
@@ -254,7 +236,7 @@ fn results(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mu
     answer.result(&DOUBT, Some(combined.half()), show.own(combined.half()), None, DOUBT.meaning.to_owned());
     answer.result(&CURVATURE, Some(worth.curvature), fine(worth.curvature), None, CURVATURE.meaning.to_owned());
     answer.result(&REFRACTION, Some(worth.refraction), fine(worth.refraction), None, REFRACTION.meaning.to_owned());
-    site::k_result(&K_USED, &worth.air, show, answer);
+    site::k_result(&worth.air, show, answer);
 }
 
 /// Exact values beside the parabola at the same k, and beside the handbook's k.

@@ -53,7 +53,7 @@ pub const QUESTION: Question = Question {
         COLLIMATION_PART,
         READING_PART,
         DISTANCE_PART,
-        K_USED,
+        site::K_IN_FORCE,
     ],
     cautions: &[
         Caution {
@@ -168,48 +168,42 @@ const READING_GROWTH: Field =
         .help("1 mm in 100 m for an ordinary telescope in still air (common practice, no source).")
         .default("0.01 mm/m")
         .under(site::RULE);
-const fn promise(name: &'static str, label: &'static str, meaning: &'static str) -> Promised {
-    Promised { name, label, meaning }
-}
-const BIAS: Promised = promise(
+const BIAS: Promised = Promised::new(
     "bias",
     "Bias",
     "what the reading, or the difference of the two, is expected to be out by; + reads too much",
 );
 const DOUBT: Promised =
-    promise("doubt", "Doubt", "95 % half-width about the bias; the greater side where the two differ");
-const CURVATURE: Promised = promise("curvature", "Curvature", "what the earth's curve adds to the reading");
+    Promised::new("doubt", "Doubt", "95 % half-width about the bias; the greater side where the two differ");
+const CURVATURE: Promised = Promised::new("curvature", "Curvature", "what the earth's curve adds to the reading");
 const REFRACTION: Promised =
-    promise("refraction", "Refraction", "what the bent line adds to the reading; − where it bends down, k > 0");
+    Promised::new("refraction", "Refraction", "what the bent line adds to the reading; − where it bends down, k > 0");
 const COLLIMATION_PART: Promised =
-    promise("collimation_part", "Collimation", "what the level's own error adds to the reading");
-const READING_PART: Promised = promise("reading_part", "Reading", "doubt of the reading itself");
-const DISTANCE_PART: Promised = promise("distance_part", "Distance", "doubt because the distance is not known exactly");
-const K_USED: Promised = promise("k", "k in force", "coefficient of refraction reckoned with, and its range");
-const REACH_UNCORRECTED: Promised = promise(
+    Promised::new("collimation_part", "Collimation", "what the level's own error adds to the reading");
+const READING_PART: Promised = Promised::new("reading_part", "Reading", "doubt of the reading itself");
+const DISTANCE_PART: Promised =
+    Promised::new("distance_part", "Distance", "doubt because the distance is not known exactly");
+const REACH_UNCORRECTED: Promised = Promised::new(
     "reach_uncorrected",
     "Reach, nothing corrected",
     "longest sight whose bias and doubt are within the allowance",
 );
-const REACH_CORRECTED: Promised =
-    promise("reach_corrected", "Reach, correction applied", "longest sight whose doubt alone is within the allowance");
+const REACH_CORRECTED: Promised = Promised::new(
+    "reach_corrected",
+    "Reach, correction applied",
+    "longest sight whose doubt alone is within the allowance",
+);
 const OTHER_SHORTEST: Promised =
-    promise("other_shortest", "Other sight at least", "shortest other sight that still balances this one");
+    Promised::new("other_shortest", "Other sight at least", "shortest other sight that still balances this one");
 const OTHER_LONGEST: Promised =
-    promise("other_longest", "Other sight at most", "longest other sight that still balances this one");
-const BOTH_WAYS: Promised = promise(
+    Promised::new("other_longest", "Other sight at most", "longest other sight that still balances this one");
+const BOTH_WAYS: Promised = Promised::new(
     "both_ways",
     "Doubt when observed both ways",
     "95 % half-width of the mean of the differences seen from both ends",
 );
 
 fn answer(asked: &Asked, answer: &mut Answer) {
-    site::doubt_k(asked, answer);
-    if let Some(first) = asked.problems.first() {
-        answer.verdict.word = decide::NOT_KNOWN;
-        answer.verdict.sentence = first.message.clone();
-        return;
-    }
     let case = Case::of(asked, site::sky(asked));
     let limits = limit::all(asked, &case);
     decide::decide(asked, &case, &limits, answer);

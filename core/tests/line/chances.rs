@@ -161,7 +161,7 @@ fn more_spare_is_no_less_chance() {
         let (mut points, common) = any(&mut random);
         let before = chance(&points, common);
         assert!((0.0..=1.0).contains(&before));
-        let row = random.below(u32::try_from(points.len()).unwrap());
+        let row = random.below(points.len());
         points[row].spare.0 += random.spread(0.01, 10.0);
         assert!(chance(&points, common) >= before - 2.0 * STATED);
         let all = chance(&points, common);

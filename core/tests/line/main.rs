@@ -9,10 +9,13 @@ mod air;
 mod chances;
 mod figures;
 mod properties;
+#[path = "../common/random.rs"]
+mod random;
 
 use farstaff::line::Line;
 use farstaff::line::profile::Profile;
 use farstaff::quantity::{Coefficient, Metres};
+use random::Random;
 use std::collections::BTreeMap;
 
 const R: Metres = Metres(6_371_000.0);
@@ -51,29 +54,9 @@ impl Ground {
     }
 }
 
-/// SplitMix64: Steele, Lea & Flood, Fast Splittable Pseudorandom Number Generators (2014), constants from memory.
-struct Random(u64);
-
 impl Random {
-    fn next(&mut self) -> u64 {
-        self.0 = self.0.wrapping_add(0x9E37_79B9_7F4A_7C15);
-        let mixed = (self.0 ^ (self.0 >> 30)).wrapping_mul(0xBF58_476D_1CE4_E5B9);
-        let mixed = (mixed ^ (mixed >> 27)).wrapping_mul(0x94D0_49BB_1331_11EB);
-        mixed ^ (mixed >> 31)
-    }
-    fn below(&mut self, n: u32) -> usize {
-        usize::try_from(self.next() % u64::from(n)).unwrap()
-    }
-    /// Above 0, below 1.
-    fn share(&mut self) -> f64 {
-        (f64::from(u32::try_from(self.next() >> 32).unwrap()) + 0.5) / 4_294_967_296.0
-    }
     fn between(&mut self, low: f64, high: f64) -> f64 {
         low + (high - low) * self.share()
-    }
-    /// Evenly in the logarithm.
-    fn spread(&mut self, low: f64, high: f64) -> f64 {
-        low * libm::exp(libm::log(high / low) * self.share())
     }
     /// Standard normal, by Box and Muller.
     fn normal(&mut self) -> f64 {

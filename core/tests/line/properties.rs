@@ -72,7 +72,7 @@ fn the_least_is_that_of_every_point() {
         // Rows that are no points change nothing, wherever they stand.
         let mut more = sight.ground.clone();
         for (x, top) in [(-1.0, 1e9), (sight.s + 1.0, 1e9), (0.0, 1e9), (sight.s, 1e9), (f64::NAN, 1e9)] {
-            let at = random.below(u32::try_from(more.at_m.len() + 1).unwrap());
+            let at = random.below(more.at_m.len() + 1);
             more.at_m.insert(at, x);
             more.top_m.insert(at, top);
             more.at_m.push(sight.s / 2.0);
@@ -112,7 +112,7 @@ fn the_order_of_the_rows_does_not_matter() {
         let mut rows: Vec<(f64, f64)> =
             sight.ground.at_m.iter().copied().zip(sight.ground.top_m.iter().copied()).collect();
         for i in (1..rows.len()).rev() {
-            rows.swap(i, random.below(u32::try_from(i + 1).unwrap()));
+            rows.swap(i, random.below(i + 1));
         }
         let shuffled = Ground::of(rows);
         let (line, wanted) = (sight.line(), Metres(random.between(0.0, 10.0)));
@@ -170,7 +170,7 @@ fn raising_never_hides_and_ground_never_opens() {
             assert!(raised.clearance > least.clearance, "{sight:?}");
         }
         let mut higher = sight.ground.clone();
-        let row = random.below(u32::try_from(higher.at_m.len()).unwrap());
+        let row = random.below(higher.at_m.len());
         higher.top_m[row] += raise;
         assert!(sight.line().least(higher.profile()).unwrap().clearance <= least.clearance);
         higher.at_m.push(sight.s * random.share());

@@ -201,18 +201,13 @@ impl View {
 fn in_force(asked: &Asked, entered: &Entered, guide: KRange, varies: bool) -> (KRange, &'static str) {
     let value = asked.number(entered.k);
     let half = asked.number(entered.doubt);
-    let (below, above) = match half {
-        Some(half) => (half, half),
-        None => (guide.value.0 - guide.low.0, guide.high.0 - guide.value.0),
-    };
-    let k = value.unwrap_or(guide.value.0);
     let source = match (value, half, varies) {
         (Some(_), Some(_), _) => "as entered",
         (Some(_), None, _) => "as entered, its doubt by our guide",
         (None, _, true) => "our guide, place by place along a line that runs low",
         (None, _, false) => "our guide at the height of the line",
     };
-    (KRange { value: Coefficient(k), low: Coefficient(k - below), high: Coefficient(k + above) }, source)
+    (site::entered_or(value, half, guide), source)
 }
 
 /// The points between the stations, by distance.

@@ -5,8 +5,6 @@ use crate::quantity::show::Round;
 use crate::question::Asked;
 use crate::question::answer::{Answer, State};
 
-pub const NOT_KNOWN: &str = "Not enough is known";
-
 /// Sets the verdict.
 pub fn decide(asked: &Asked, case: &Case, answer: &mut Answer) {
     let show = asked.show();

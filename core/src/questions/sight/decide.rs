@@ -10,7 +10,6 @@ use crate::question::{Asked, site};
 use crate::sight::bounds::Stretch;
 use crate::sight::budget::Term;
 
-pub const NOT_KNOWN: &str = "Not enough is known";
 const TAKE: &str = "Take it";
 const SHORTEN: &str = "Shorten to";
 const BALANCE: &str = "Balance within";
@@ -44,7 +43,7 @@ pub fn decide(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer)
             }
             End::Never | End::Always => {
                 verdict.word = NONE;
-                verdict.sentence = why.clone();
+                verdict.sentence = if nearest.name == OPTICAL { too_fine(case, show) } else { why.clone() };
             }
         }
         return;
@@ -57,9 +56,7 @@ pub fn decide(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer)
     }
 
     if let Some(text) = depends_on_sky(asked, show) {
-        verdict.word = NOT_KNOWN;
-        verdict.sentence = format!("{text} {rule}");
-        verdict.state = State::Unknown;
+        answer.not_known(format!("{text} {rule}"));
         return;
     }
 
@@ -116,12 +113,17 @@ fn shortest_help(case: &Case, far: Option<Stretch>, given: bool, rule: &str, sho
         verdict.sentence = format!("Neither balancing nor observing both ways keeps this distance. {rule}");
     } else {
         verdict.word = NONE;
-        verdict.sentence = format!(
-            "Doubt grows from {} at the shortest sight on, and {} is allowed. Read finer, or allow more.",
-            show.own(case.error(SEARCH.0).half()),
-            show.entered(case.allowed)
-        );
+        verdict.sentence = too_fine(case, show);
     }
+}
+
+/// Why no distance at all is within what is allowed.
+fn too_fine(case: &Case, show: Show) -> String {
+    format!(
+        "Doubt grows from {} at the shortest sight on, and {} is allowed. Read finer, or allow more.",
+        show.own(case.error(SEARCH.0).half()),
+        show.entered(case.allowed)
+    )
 }
 
 /// How far a sight that may be taken might run, and a sentence: how much of the allowance it uses, where the answer flips.

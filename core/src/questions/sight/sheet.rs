@@ -66,7 +66,7 @@ fn each(case: &Case, parts: &[Part; 5], known: bool, show: Show, answer: &mut An
             answer.result(promise, Some(error.bias), bias, Some(doubt), meaning);
         }
     }
-    site::k_result(&K_USED, &case.air, show, answer);
+    site::k_result(&case.air, show, answer);
 }
 
 fn reaches(case: &Case, show: Show, answer: &mut Answer) {
