@@ -12,6 +12,7 @@ pub mod constants;
 pub mod doubt;
 pub mod earth;
 pub mod horizon;
+pub mod levelling;
 pub mod limits;
 pub mod line;
 mod order;
