@@ -1,4 +1,21 @@
 //! A run of levels: what was read, in the order in which it was read. Metres throughout.
+//!
+//! [`reduce`] makes levels of it, [`wires`] readings of three wires, [`balance`] says what unequal sights have put in,
+//! [`correct`] takes out what is known, [`closure`] judges the end and [`adjust`] spreads what is left.
+//! [`blunder`] looks for the slip where it does not close, [`twice`] compares two books of one line and joins them by
+//! [`net`], [`stop`] checks the marks left overnight.
+
+pub mod adjust;
+pub mod balance;
+pub mod blunder;
+pub mod closure;
+pub mod correct;
+pub mod net;
+pub mod reduce;
+pub mod slope;
+pub mod stop;
+pub mod twice;
+pub mod wires;
 
 /// One reading of a staff.
 #[derive(Debug, Clone, Copy, PartialEq)]

@@ -16,6 +16,7 @@ pub mod levelling;
 pub mod limits;
 pub mod line;
 mod order;
+pub mod pairs;
 pub mod place;
 pub mod quantity;
 pub mod question;

@@ -4,6 +4,7 @@
 
 pub mod bounds;
 pub mod budget;
+pub mod one_mark;
 
 use crate::quantity::{Metres, Tilt};
 

@@ -55,11 +55,11 @@ pub struct Budget {
 }
 
 /// What refraction takes off one reading, and how much more or less it may take.
-struct Bend {
-    value: f64,
+pub(crate) struct Bend {
+    pub value: f64,
     /// Lost when k is at its low end: the reading is greater by so much.
-    above: f64,
-    below: f64,
+    pub above: f64,
+    pub below: f64,
 }
 
 impl Budget {
@@ -67,16 +67,16 @@ impl Budget {
     fn refraction(&self, d: Metres, k: Coefficient) -> f64 {
         ray::refraction(d, k, self.radius).map_or(k.0 * d.0 * d.0 / (2.0 * self.radius.0), |r| r.0)
     }
-    fn bend(&self, d: Metres) -> Bend {
+    pub(crate) fn bend(&self, d: Metres) -> Bend {
         let value = self.refraction(d, self.k.value);
         let (low, high) = (self.refraction(d, self.k.low), self.refraction(d, self.k.high));
         Bend { value, above: (value - low).max(0.0), below: (high - value).max(0.0) }
     }
     /// How fast the expected error grows with distance: (1 − k) s/R + α.
-    fn slope(&self, d: Metres) -> f64 {
+    pub(crate) fn slope(&self, d: Metres) -> f64 {
         (1.0 - self.k.value.0) * d.0 / self.radius.0 + self.collimation.0
     }
-    fn reading_doubt(&self, d: Metres) -> f64 {
+    pub(crate) fn reading_doubt(&self, d: Metres) -> f64 {
         libm::hypot(self.reading.0, self.reading_growth.0 * d.0)
     }
     fn parts(
