@@ -1,6 +1,7 @@
 //! What holds for every question, as declared.
 
-use farstaff::question::field::Kind;
+use farstaff::quantity::unit::Quantity;
+use farstaff::question::field::{Aid, Kind};
 use farstaff::question::{Field, Question, ask, catalogue};
 use farstaff_tests::sound::faults;
 use std::collections::{BTreeMap, BTreeSet};
@@ -18,6 +19,20 @@ fn required(question: &Question) -> Vec<(&'static str, &'static str)> {
     question.fields.iter().filter(|f| f.required).map(|f| (f.name, f.example)).collect()
 }
 
+/// The choice a field hangs on, if any, is so by default.
+fn asked_at_first(question: &Question, field: &Field) -> bool {
+    field.when.is_none_or(|when| {
+        let choice = question.fields.iter().find(|f| f.name == when.field);
+        choice.is_some_and(|choice| when.values.contains(&choice.default))
+    })
+}
+
+/// What must be chosen for a field to be asked.
+fn so_that_it_is_asked(field: &Field) -> Option<(&'static str, &'static str)> {
+    let when = field.when?;
+    Some((when.field, when.values.first()?))
+}
+
 fn unique<'a>(names: impl IntoIterator<Item = &'a str>) -> bool {
     let mut seen = BTreeSet::new();
     names.into_iter().all(|name| seen.insert(name))
@@ -30,6 +45,15 @@ fn names_are_unique_and_shared_fields_are_one() {
     for question in questions() {
         assert!(unique(question.fields.iter().map(|f| f.name)), "{}", question.id);
         assert!(unique(question.results.iter().map(|r| r.name)), "{}", question.id);
+        for (at, field) in question.fields.iter().enumerate() {
+            let Some(when) = field.when else { continue };
+            let choice = question.fields[..at].iter().find(|f| f.name == when.field).map(|f| f.kind);
+            let Some(Kind::Choice { options, .. }) = choice else {
+                panic!("{}: hangs on no choice before it", field.name)
+            };
+            let known = |value: &&str| options.iter().any(|o| o.value == *value);
+            assert!(!when.values.is_empty() && when.values.iter().all(known), "{}", field.name);
+        }
         for field in question.fields.iter().filter(|f| f.shared) {
             let declared = format!("{field:?}");
             assert_eq!(*shared.entry(field.name).or_insert(declared.clone()), declared, "{}", field.name);
@@ -54,7 +78,7 @@ fn say_what_they_are(of: &str, fields: &[Field]) {
                 assert!(min < max && !why.is_empty() && negative == (min < 0.0), "{name}");
             }
             Kind::Text { most, why } => assert!(most > 0 && !why.is_empty(), "{name}"),
-            Kind::Table { columns, row, most, why } => {
+            Kind::Table { columns, row, most, why, .. } => {
                 assert!(columns.len() > 1 && !row.is_empty() && most > 1 && !why.is_empty(), "{name}");
                 assert!(unique(columns.iter().map(|c| c.name)) && unique(columns.iter().map(|c| c.label)), "{name}");
                 assert!(columns.iter().all(|c| !matches!(c.kind, Kind::Table { .. })), "{name}: a table in a table");
@@ -66,6 +90,31 @@ fn say_what_they_are(of: &str, fields: &[Field]) {
             }
         }
     }
+}
+
+#[test]
+fn what_spares_keys_fits_its_field() {
+    let mut seen = 0;
+    for question in questions() {
+        let columns = question.fields.iter().filter_map(|f| match f.kind {
+            Kind::Table { columns, .. } => Some(columns),
+            _ => None,
+        });
+        for field in question.fields.iter().chain(columns.flatten()) {
+            let fits = match field.aid {
+                None => true,
+                Some(Aid::Staff) => matches!(field.kind, Kind::Number { quantity: Quantity::Height, .. }),
+                Some(Aid::Numbered | Aid::Stamped) => matches!(field.kind, Kind::Text { .. }),
+            };
+            assert!(fits, "{} {}", question.id, field.name);
+            if let Kind::Table { booking: Some(booking), .. } = field.kind {
+                let known = |name: &str| question.fields.iter().any(|f| f.name == name);
+                assert!(booking.pause.is_none_or(|p| p.after > 0 && !p.text.is_empty() && known(p.field)));
+                seen += 1;
+            }
+        }
+    }
+    assert!(seen > 0, "no table is booked");
 }
 
 #[test]
@@ -96,7 +145,8 @@ fn nothing_entered_asks_for_what_is_required_and_for_nothing_else() {
     for question in questions() {
         let answer = ask(question.id, "").expect("it is a question");
         let missing: Vec<&str> = answer.problems.iter().map(|p| p.field).collect();
-        let wanted: Vec<&str> = question.fields.iter().filter(|f| f.required).map(|f| f.name).collect();
+        let wanted = question.fields.iter().filter(|f| f.required && asked_at_first(question, f));
+        let wanted: Vec<&str> = wanted.map(|f| f.name).collect();
         assert_eq!(missing, wanted, "{}", question.id);
     }
 }
@@ -136,7 +186,11 @@ fn whole_ranges_answer_and_canonical_entries_say_the_same() {
         for field in question.fields {
             for text in right(field) {
                 let entry = form(
-                    required(question).into_iter().filter(|p| p.0 != field.name).chain([(field.name, text.as_str())]),
+                    required(question)
+                        .into_iter()
+                        .filter(|p| p.0 != field.name)
+                        .chain(so_that_it_is_asked(field))
+                        .chain([(field.name, text.as_str())]),
                 );
                 let answer = ask(question.id, &entry).expect("it is a question");
                 let ok = answer.problems.is_empty() || (field.required && text.is_empty());

@@ -7,6 +7,7 @@ pub mod answer;
 pub mod asked;
 pub mod field;
 pub mod figure;
+pub mod names;
 pub mod pencil;
 pub mod site;
 
@@ -100,6 +101,11 @@ pub fn ask(id: &str, entry: &str) -> Option<Answer> {
     let question = crate::questions::ALL.iter().find(|q| q.id == id)?;
     let asked = Asked::read(question, entry);
     let mut answer = Answer::new(question, &asked);
+    for field in question.fields {
+        if let Kind::Table { booking: Some(booking), .. } = field.kind {
+            answer.booked.push((booking.rows)(&asked));
+        }
+    }
     site::doubt_k(&asked, &mut answer);
     match asked.problems.first() {
         Some(first) => answer.not_known(first.message.clone()),

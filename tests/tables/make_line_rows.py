@@ -163,13 +163,14 @@ def reference(function, n):
     return value, (abs(need) + terms(a + value, b + value, s, x, k, r)) / abs(value)
 
 
-for function in HARDEST:
-    made = 0
-    for arguments in HARDEST[function]:
-        emit(function, arguments, *reference(function, arguments))
-    while made < COUNT:
-        arguments = rows(function)
-        found = reference(function, arguments)
-        if found is not None:
-            made += 1
-            emit(function, arguments, *found)
+if __name__ == "__main__":
+    for function in HARDEST:
+        made = 0
+        for arguments in HARDEST[function]:
+            emit(function, arguments, *reference(function, arguments))
+        while made < COUNT:
+            arguments = rows(function)
+            found = reference(function, arguments)
+            if found is not None:
+                made += 1
+                emit(function, arguments, *found)

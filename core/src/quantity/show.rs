@@ -1,6 +1,7 @@
 //! Quantity → text: how many digits, which unit, which way to round.
 
 use super::unit::{Quantity, System, Unit};
+use std::f64::consts::PI;
 
 /// A value as a person reads it.
 #[derive(Debug, Clone, PartialEq)]
@@ -149,6 +150,12 @@ impl Show {
             return (whole(low), whole(high));
         }
         (fine_from, fine_to)
+    }
+    /// An angle of a position in degrees, minutes and seconds, to a hundredth of a second: 0.3 m of the earth.
+    pub fn position(self, radians: f64) -> String {
+        let hundredths = libm::round(radians.abs() * 180.0 / PI * 360_000.0) as u64;
+        let (seconds, rest) = (hundredths / 100, hundredths % 100);
+        format!("{}°{:02}′{:02}.{rest:02}″", seconds / 3600, seconds / 60 % 60, seconds % 60)
     }
     /// A tilt of the line, mm/m and seconds of arc.
     pub fn tilt(self, rise: f64) -> String {

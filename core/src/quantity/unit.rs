@@ -25,6 +25,14 @@ pub enum Quantity {
     Refraction,
     /// A share of a whole.
     Share,
+    /// North of the equator; south is below 0. Radians.
+    Latitude,
+    /// East of Greenwich; west is below 0. Radians.
+    Longitude,
+    /// Easting or northing of a grid.
+    Coordinate,
+    /// A factor near one: the scale of a grid.
+    Factor,
 }
 
 /// A unit as the page shows it.
@@ -125,6 +133,10 @@ const ARC_SECOND: Unit =
 const MILLIGON: Unit = Unit { symbol: "mgon", also: &["mgrad"], scale: Scale::TangentOf(1.0, 200_000.0) };
 const DEGREE: Unit = Unit { symbol: "°", also: &["deg", "º"], scale: Scale::TangentOf(1.0, 180.0) };
 const GON: Unit = Unit { symbol: "gon", also: &["grad", "g"], scale: Scale::TangentOf(1.0, 200.0) };
+/// An angle by itself, not its tangent.
+const ARC_DEGREE: Unit = unit("°", &["deg", "º"], PI, 180.0);
+const ARC_GON: Unit = unit("gon", &["grad", "g"], PI, 200.0);
+const TIMES: Unit = unit("×", &["x"], 1.0, 1.0);
 const ONE_IN: Unit = Unit { symbol: "1 in", also: &[], scale: Scale::Inverse };
 const K: Unit = unit("k", &[], 1.0, 1.0);
 const HALF_K: Unit = unit("m", &[], 2.0, 1.0);
@@ -142,6 +154,8 @@ const SURVEY_FOOT: UnitInfo = info(FT_US, "US survey foot");
 const MILE: UnitInfo = info(MI, "mile");
 const SEA_MILE: UnitInfo = info(NAUTICAL_MILE, "nautical mile");
 const KILOMETRE: UnitInfo = info(KM, "kilometre");
+
+const ANGLES: &[UnitInfo] = &[info(ARC_DEGREE, "degree"), info(ARC_GON, "gon")];
 
 const fn same(name: Quantity, units: &'static [UnitInfo], usual: &'static str) -> QuantityInfo {
     QuantityInfo { name, units, metric: usual, foot: usual, survey_foot: usual }
@@ -189,6 +203,10 @@ pub const QUANTITIES: &[QuantityInfo] = &[
         "k",
     ),
     same(Quantity::Share, &[info(PERCENT, "percent"), info(PER_ONE, "of one")], "%"),
+    same(Quantity::Latitude, ANGLES, "°"),
+    same(Quantity::Longitude, ANGLES, "°"),
+    lengths(Quantity::Coordinate, &[METRE, KILOMETRE, FOOT, SURVEY_FOOT], "m"),
+    same(Quantity::Factor, &[info(TIMES, "times")], "×"),
 ];
 
 const ALL: &[Unit] = &[
@@ -214,7 +232,10 @@ const ALL: &[Unit] = &[
     FACTOR,
     ONE_OVER,
     PER_ONE,
+    TIMES,
 ];
+/// Where [`ALL`] has other units of the same name.
+const ARCS: &[Unit] = &[ARC_DEGREE, ARC_GON];
 
 /// Which unit a bare number has.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -232,6 +253,10 @@ impl Quantity {
     pub fn info(self) -> &'static QuantityInfo {
         const NONE: &QuantityInfo = &same(Quantity::Share, &[], "");
         QUANTITIES.iter().find(|q| q.name == self).unwrap_or(NONE)
+    }
+    /// Half of a position: it may have a letter for its side of the equator or of Greenwich.
+    pub fn is_position(self) -> bool {
+        matches!(self, Quantity::Latitude | Quantity::Longitude)
     }
     /// The unit a bare number has.
     pub fn usual(self, system: System) -> Unit {
@@ -251,7 +276,8 @@ impl Quantity {
         let mine = |u: &&Unit| self.info().units.iter().any(|i| i.symbol == u.symbol);
         let half = |u: &Unit| u.scale == HALF_K.scale && u.symbol == HALF_K.symbol;
         let right = |u: &&Unit| half(u) == (self == Quantity::Refraction && u.symbol == HALF_K.symbol);
-        let all = || ALL.iter().filter(mine).filter(right);
+        let known = if self.is_position() { ARCS } else { ALL };
+        let all = || known.iter().filter(mine).filter(right);
         all()
             .find(|u| u.symbol == text)
             .or_else(|| all().find(|u| u.symbol.eq_ignore_ascii_case(lower) || u.also.contains(&lower)))

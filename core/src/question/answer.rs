@@ -27,10 +27,17 @@ pub struct Answer {
     pub working: Vec<String>,
     /// What else to know.
     pub notes: Vec<Note>,
+    /// What can be handed on to the site.
+    pub offers: Vec<Offer>,
     /// Where formulas and figures come from.
     pub sources: Vec<&'static str>,
     /// How each field was read.
     pub read: Vec<Read>,
+    /// What belongs to single rows of tables that are booked row by row.
+    pub booked: Vec<Booked>,
+    /// The cell in hand, said back. The entry names it as `TABLE.at`: the column, from 0, of the table's first row.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub heard: Option<Heard>,
     /// What was asked, self-contained, with units and defaults: a link, a record, a row of a test.
     pub entry: String,
 }
@@ -72,6 +79,30 @@ pub struct Fix {
     #[serde(skip_serializing_if = "Option::is_none")]
     pub cell: Option<Cell>,
     /// Its new text, without unit.
+    pub text: String,
+    /// Its new unit, empty for none.
+    pub unit: &'static str,
+}
+
+/// Values that the answer hands on: one tap puts them all in, one undo takes them out again.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Offer {
+    /// Words on the key: "Reckon with −0.024 mm/m from now on".
+    pub label: String,
+    /// What the tap does.
+    pub text: String,
+    /// What is put where: in fields of this question, those shared with the site among them.
+    pub values: Vec<Handed>,
+}
+
+/// A value that is handed on.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Handed {
+    /// Field to set.
+    pub field: &'static str,
+    /// Its new text, without unit; a whole table as its rows.
     pub text: String,
     /// Its new unit, empty for none.
     pub unit: &'static str,
@@ -176,6 +207,63 @@ pub struct Read {
     pub assumed: bool,
 }
 
+/// A table that is booked row by row: where it goes on, and what is to be said at its rows.
+#[derive(Debug, Clone, PartialEq, Default, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Booked {
+    /// Name of the table.
+    pub field: &'static str,
+    /// Column, from 0, in which the row to come is most likely begun: the back sight after a fore sight.
+    pub begin: usize,
+    /// What the row to come is called, by the column it is begun in; columns that are not listed give it no name.
+    pub names: Vec<Named>,
+    /// Rows at which something is to be said, from the first on.
+    pub rows: Vec<AtRow>,
+}
+
+/// A name for the row to come.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Named {
+    /// Where it is begun in this column, from 0,
+    pub column: usize,
+    /// it is called so; empty where the point it belongs to has no name.
+    pub text: String,
+}
+
+/// What is to be said at a row.
+#[derive(Debug, Clone, PartialEq, Default, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct AtRow {
+    /// Line of the table's text, from 0; struck rows count.
+    pub row: usize,
+    /// The row begins something, a setup: its heading. Empty where it does not.
+    pub head: String,
+    /// What may be wrong there though it can be read.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub cautions: Vec<AtCell>,
+}
+
+/// What may be wrong at a cell.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct AtCell {
+    /// Column, from 0.
+    pub column: usize,
+    /// What to know, in a sentence.
+    pub text: String,
+}
+
+/// A cell said back.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Heard {
+    /// What is said: "As heard, 1.234 m".
+    pub label: String,
+    /// The words, to be read out: "one two three four".
+    pub words: String,
+}
+
 /// The verdict where nothing is decided.
 const NOT_KNOWN: &str = "Not enough is known";
 
@@ -192,8 +280,11 @@ impl Answer {
             figure: None,
             working: vec![],
             notes: asked.notes.clone(),
+            offers: vec![],
             sources: question.sources.to_vec(),
             read: asked.read.clone(),
+            booked: vec![],
+            heard: asked.heard.clone(),
             entry: asked.entry.clone(),
         }
     }

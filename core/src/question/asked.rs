@@ -1,12 +1,13 @@
 //! Reading an entry: text by field name → what was read and what was wrong. It never fails and never guesses silently.
 
+mod aloud;
 mod cell;
 mod echo;
 mod entered;
 pub mod gpx;
 mod table;
 
-use super::answer::{Fix, Level, Note, Problem, Read};
+use super::answer::{Fix, Heard, Level, Note, Problem, Read};
 use super::field::{Field, Kind};
 use super::{Question, site};
 use crate::quantity::show::Show;
@@ -26,6 +27,8 @@ pub struct Asked {
     pub read: Vec<Read>,
     /// What was asked, with units and defaults.
     pub entry: String,
+    /// The cell in hand, said back.
+    pub heard: Option<Heard>,
     /// Which unit a bare number has, and which the answer is shown in.
     pub system: System,
     values: Vec<Value>,
@@ -72,6 +75,7 @@ impl Asked {
             notes: vec![],
             read: vec![],
             entry: String::new(),
+            heard: None,
             system,
             values: vec![],
             rows: vec![],
@@ -89,8 +93,19 @@ impl Asked {
     }
 
     fn read_field(&mut self, field: &'static Field, form: &Form, canonical: &mut Canonical) {
-        let (typed, picked) = (form.get(field.name).trim(), form.unit_of(field.name));
+        // A sign that cannot be seen is no more than a space at either end.
+        let typed = form.get(field.name).trim_matches(|c: char| c.is_whitespace() || c.is_control());
+        let picked = form.unit_of(field.name);
         let given = !typed.is_empty();
+        if !self.asks(field) {
+            // Kept for when it is asked again.
+            for (name, text) in [(field.name, typed), (&format!("{}.unit", field.name), picked)] {
+                if !text.is_empty() {
+                    canonical.append_pair(name, text);
+                }
+            }
+            return;
+        }
         let text = if given { typed } else { field.default };
         if text.is_empty() {
             if field.required {
@@ -106,6 +121,10 @@ impl Asked {
                     self.notes.push(Note { level: Level::Caution, text, fixes: vec![fix] });
                 }
                 let (unit, echo) = match (&what, field.kind) {
+                    (What::Number(si, unit), Kind::Number { .. }) if field.aid.is_some() => {
+                        let heard = aloud::heard(field, *si, unit, self.show());
+                        (unit.symbol, heard.map_or(String::new(), |heard| aloud::line(&heard)))
+                    }
                     (What::Number(si, unit), Kind::Number { quantity, .. }) => {
                         (unit.symbol, echo::words(quantity, *si, unit, self.show()))
                     }
@@ -128,7 +147,7 @@ impl Asked {
     fn read_table(&mut self, field: &'static Field, columns: &'static [Field], form: &Form, canonical: &mut Canonical) {
         let text = form.get(field.name);
         let picked = |column: &Field| form.unit_of(&format!("{}.{}", field.name, column.name)).to_owned();
-        let table = table::read(field, columns, self.system, text, picked);
+        let table = table::read(field, columns, self.system, text, picked, |column| self.asks(column));
         if table.text.is_empty() {
             if field.required {
                 self.problem(field, cell::missing(field), vec![]);
@@ -141,6 +160,10 @@ impl Asked {
                 }
             }
             self.read.push(Read { field: field.name, text: table.text, unit: "", echo: table.echo, assumed: false });
+        }
+        let at = form.get(&format!("{}.at", field.name)).parse().ok().and_then(|at: usize| columns.get(at));
+        if let (Some(column), Some(row)) = (at, table.rows.first()) {
+            self.heard = row.measured(column).and_then(|(si, unit)| aloud::heard(column, si, unit, self.show()));
         }
         self.problems.extend(table.problems);
         self.notes.extend(table.notes.into_iter().map(|text| Note { level: Level::Note, text, fixes: vec![] }));
@@ -167,6 +190,12 @@ impl Asked {
         self.problems.push(Problem { field: field.name, cell: None, message, fixes });
     }
 
+    /// The choice that it hangs on, if any, is made that way.
+    fn asks(&self, field: &Field) -> bool {
+        field.when.is_none_or(|when| {
+            self.values.iter().any(|v| v.field == when.field && when.values.contains(&v.what.choice()))
+        })
+    }
     fn value(&self, field: &Field) -> Option<&Value> {
         self.values.iter().find(|v| v.field == field.name)
     }

@@ -1,5 +1,7 @@
 //! A field of a question: what is asked, in which quantity, over which range and why.
 
+use super::Asked;
+use super::answer::Booked;
 use super::asked::gpx::Rows;
 use crate::quantity::unit::Quantity;
 use serde::Serialize;
@@ -26,10 +28,66 @@ pub struct Field {
     pub shared: bool,
     /// Heading under which it stands; empty for those always in view.
     pub group: &'static str,
+    /// How it fills itself, or is typed with fewer keys.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub aid: Option<Aid>,
+    /// Asked only where a choice of the question has a value; a column is then out of sight.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub when: Option<When>,
     /// Reads a file that is no table into the rows of this one: GPX for a table with positions.
     #[serde(skip)]
     #[cfg_attr(feature = "ts", tsify(skip))]
     pub file: Option<FileReader>,
+}
+
+/// A choice, and the values it must have for a field to be asked.
+#[derive(Debug, Clone, Copy, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct When {
+    /// Name of the choice, a field of the question that stands before.
+    pub field: &'static str,
+    /// What must be chosen: one of these.
+    pub values: &'static [&'static str],
+}
+
+/// What spares the person keys. What was typed by hand is never changed by it.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+#[serde(rename_all = "snake_case")]
+pub enum Aid {
+    /// A staff reading: four digits and nothing else are read with the point where a staff has it, 1234 as 1.234 m, in
+    /// feet as 12.34 ft; it is said back digit by digit. Five digits are asked back: a key may have bounced.
+    Staff,
+    /// A column of names: a row that is begun takes the name that [`Booked`] offers.
+    Numbered,
+    /// A column of times: a row that is begun takes the time of the device's clock, `14:05`, and on a new day
+    /// `2026-12-01 14:05`.
+    Stamped,
+}
+
+/// What a table needs to be booked row by row, as the work goes on.
+#[derive(Debug, Clone, Copy, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Booking {
+    /// What belongs to single rows. It is asked each time, whatever else is wrong or missing in the entry; also with
+    /// the last rows alone.
+    #[serde(skip)]
+    #[cfg_attr(feature = "ts", tsify(skip))]
+    pub rows: fn(&Asked) -> Booked,
+    /// What to ask when the work was interrupted.
+    pub pause: Option<Pause>,
+}
+
+/// After a break something may have moved: what to ask then.
+#[derive(Debug, Clone, Copy, Serialize)]
+#[cfg_attr(feature = "ts", derive(tsify::Tsify))]
+pub struct Pause {
+    /// Minutes without an entry after which it is asked.
+    pub after: u32,
+    /// The question, in a sentence or two.
+    pub text: &'static str,
+    /// Name of the field that answers it.
+    pub field: &'static str,
 }
 
 /// Text, columns, most rows → rows; `None` where the text is no such file, words where it is a broken one.
@@ -79,6 +137,9 @@ pub enum Kind {
         most: usize,
         /// Why no more.
         why: &'static str,
+        /// Where it is booked row by row.
+        #[serde(skip_serializing_if = "Option::is_none")]
+        booking: Option<&'static Booking>,
     },
 }
 
@@ -95,7 +156,20 @@ pub struct Opt {
 impl Field {
     const fn plain(name: &'static str, label: &'static str, kind: Kind, example: &'static str) -> Field {
         let (help, default, group) = ("", "", "");
-        Field { name, label, help, kind, default, example, required: false, shared: false, group, file: None }
+        Field {
+            name,
+            label,
+            help,
+            kind,
+            default,
+            example,
+            required: false,
+            shared: false,
+            group,
+            aid: None,
+            when: None,
+            file: None,
+        }
     }
     /// A number of the given quantity; `example` is an entry that is right.
     pub const fn number(name: &'static str, label: &'static str, quantity: Quantity, example: &'static str) -> Field {
@@ -121,13 +195,25 @@ impl Field {
     }
     /// Rows of `columns`, each called `row`.
     pub const fn table(name: &'static str, label: &'static str, columns: &'static [Field], row: &'static str) -> Field {
-        Field::plain(name, label, Kind::Table { columns, row, most: 0, why: "" }, "")
+        Field::plain(name, label, Kind::Table { columns, row, most: 0, why: "", booking: None }, "")
     }
     /// Most rows of a table, and why no more.
     pub const fn rows(mut self, limit: usize, reason: &'static str) -> Field {
-        if let Kind::Table { columns, row, .. } = self.kind {
-            self.kind = Kind::Table { columns, row, most: limit, why: reason };
+        if let Kind::Table { columns, row, booking, .. } = self.kind {
+            self.kind = Kind::Table { columns, row, most: limit, why: reason, booking };
         }
+        self
+    }
+    /// The table is booked row by row.
+    pub const fn booking(mut self, how: &'static Booking) -> Field {
+        if let Kind::Table { columns, row, most, why, .. } = self.kind {
+            self.kind = Kind::Table { columns, row, most, why, booking: Some(how) };
+        }
+        self
+    }
+    /// Spares the person keys.
+    pub const fn aid(mut self, aid: Aid) -> Field {
+        self.aid = Some(aid);
         self
     }
     /// Reads files of this kind too.
@@ -165,6 +251,11 @@ impl Field {
     /// The same for every question of a site.
     pub const fn shared(mut self) -> Field {
         self.shared = true;
+        self
+    }
+    /// Asked only where the choice of that name has one of these values.
+    pub const fn when(mut self, field: &'static str, values: &'static [&'static str]) -> Field {
+        self.when = Some(When { field, values });
         self
     }
     /// Stands under this heading.

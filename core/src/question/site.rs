@@ -8,10 +8,13 @@ use crate::constants::{EARTH_RADIUS, RADIUS_SPREAD};
 use crate::doubt::Estimate;
 use crate::quantity::show::{Show, Shown};
 use crate::quantity::unit::{Quantity, Unit};
-use crate::quantity::{Coefficient, Metres};
+use crate::quantity::{Coefficient, Metres, Tilt};
+use crate::sight::budget::Budget;
 
 /// Heading of the fields about the air.
 pub const AIR: &str = "The air";
+/// Heading of the fields about the level in use.
+pub const LEVEL: &str = "The level";
 /// Heading of the fields that set the rule.
 pub const RULE: &str = "The rule";
 
@@ -51,6 +54,65 @@ pub const DISTANCE: Field = Field::number("distance", "Distance", Quantity::Dist
 pub const DISTANCE_DOUBT: Field = Field::number("distance_doubt", "Doubt of the distances", Quantity::Share, "5 %")
     .range(0.0, 1.0, "it is a share of the distance")
     .under(RULE);
+
+/// What a height may be out by.
+pub const TOLERANCE: Field = Field::number("tolerance", "Tolerance", Quantity::SmallLength, "3 mm")
+    .range(0.00001, 10.0, "a hundredth of a millimetre is finer than any staff, ten metres is no tolerance")
+    .help("What the height may be out by because of this sight, or of this setup.")
+    .required()
+    .shared();
+
+/// Collimation error of the level in use.
+pub const COLLIMATION: Field = Field::number(
+    "collimation",
+    "Collimation error of the level",
+    Quantity::Collimation,
+    "0.03 mm/m",
+)
+.range(-0.01, 0.01, "a level further out than 10 mm/m is broken")
+.help(
+    "From the last peg test, + where the line points up; of a laser, its cone error. Left empty: none is known, and the doubt below stands for it.",
+)
+.shared()
+.under(LEVEL);
+
+/// Its doubt.
+pub const COLLIMATION_DOUBT: Field =
+    Field::number("collimation_doubt", "Doubt of the collimation error", Quantity::Collimation, "0.02 mm/m")
+        .range(0.0, 0.01, "a level further out than 10 mm/m is broken")
+        .help("Half-width that holds it 95 times in 100. By default what a level in adjustment is often allowed (common practice, no source).")
+        .default("0.05 mm/m")
+        .shared()
+        .under(LEVEL);
+
+/// Correlation of k between sights.
+pub const K_SHARED: Field = Field::number("k_shared", "Correlation of k", Quantity::Share, "50 %")
+    .range(0.0, 1.0, "it is a share: at 0 % the two sights have each their own air, at 100 % the same")
+    .help("How much of the doubt of k is common to the two sights of a setup, or to the two ways (our assumption, no source).")
+    .default("50 %")
+    .under(AIR);
+
+/// Share of the tolerance that one sight or setup may use.
+pub const SHARE: Field = Field::number("share", "Share of the tolerance", Quantity::Share, "50 %")
+    .range(0.01, 1.0, "it is a share of the tolerance")
+    .help("How much of the tolerance this sight may use: bias and doubt together. The rest is for everything else.")
+    .default("50 %")
+    .under(RULE);
+
+/// Doubt of a reading.
+pub const READING_DOUBT: Field = Field::number("reading_doubt", "Doubt of a reading", Quantity::SmallLength, "0.5 mm")
+    .range(0.0, 0.1, "a reading in doubt by more than a decimetre is no reading")
+    .help("Half-width at a short distance: half a millimetre for a centimetre staff read with care (common practice, no source).")
+    .default("0.5 mm")
+    .under(RULE);
+
+/// What distance adds to it.
+pub const READING_GROWTH: Field =
+    Field::number("reading_growth", "Growth of that doubt with distance", Quantity::Collimation, "0.01 mm/m")
+        .range(0.0, 0.001, "beyond 1 mm/m the staff cannot be read at all")
+        .help("1 mm in 100 m for an ordinary telescope in still air (common practice, no source).")
+        .default("0.01 mm/m")
+        .under(RULE);
 
 /// Height of the line over the ground.
 pub const LINE_HEIGHT: Field = Field::number("line_height", "Height of the line", Quantity::Height, "1.5 m")
@@ -188,6 +250,22 @@ pub fn k_result(air: &AirInForce, show: Show, answer: &mut Answer) {
     let doubt = Doubt { value: half, text: format!("from {} to {}", show.k(k.low.0), show.k(k.high.0)) };
     let shown = Shown { text: show.k(k.value.0), unit: "" };
     answer.result(&K_IN_FORCE, Some(k.value.0), shown, Some(doubt), air.source.clone());
+}
+
+/// What is known of air, earth, level and observer, as entered.
+pub fn budget(asked: &Asked, k: KRange, distance_doubt: f64) -> Budget {
+    let (radius, radius_doubt) = radius(asked);
+    Budget {
+        k,
+        common: asked.must(&K_SHARED),
+        radius,
+        radius_doubt,
+        collimation: Tilt(asked.number(&COLLIMATION).unwrap_or(0.0)),
+        collimation_doubt: Tilt(asked.must(&COLLIMATION_DOUBT)),
+        reading: Metres(asked.must(&READING_DOUBT)),
+        reading_growth: Tilt(asked.must(&READING_GROWTH)),
+        distance_doubt,
+    }
 }
 
 /// The radius in force and its doubt as a share: none where it was entered.

@@ -3,12 +3,16 @@
 mod case;
 mod decide;
 mod figure;
+mod position;
+mod rows;
 mod sheet;
 
 use crate::quantity::unit::Quantity;
+use crate::question::asked::gpx;
 use crate::question::field::{Field, Opt};
 use crate::question::{Answer, Asked, Caution, Promised, Question, site};
 use case::Case;
+use position::*;
 
 pub const QUESTION: Question = Question {
     id: "clearance",
@@ -19,8 +23,21 @@ pub const QUESTION: Question = Question {
         HEIGHT_A,
         GROUND_B,
         HEIGHT_B,
+        POSITIONS,
         DISTANCE,
+        LATITUDE_A,
+        LONGITUDE_A,
+        LATITUDE_B,
+        LONGITUDE_B,
+        EASTING_A,
+        NORTHING_A,
+        EASTING_B,
+        NORTHING_B,
+        SCALE,
         PROFILE,
+        ASIDE,
+        HEIGHTS_FROM,
+        SEPARATION,
         OVER,
         WANTED,
         site::SKY,
@@ -48,6 +65,9 @@ pub const QUESTION: Question = Question {
         SHARE_GROUND,
         SHARE_COVER,
         SHARE_K,
+        LENGTH,
+        AZIMUTH,
+        RADIUS_IN_FORCE,
     ],
     cautions: &[
         Caution {
@@ -88,14 +108,20 @@ const HEIGHT_A: Field = stand("height_a", "Eye or light at A", "1.5 m").help("Ov
 const GROUND_B: Field = ground("ground_b", "Ground at B").help("Above the same datum.").required();
 const HEIGHT_B: Field = stand("height_b", "Eye or light at B", "1.5 m").help("Over the ground there.").default("1.5 m");
 const DISTANCE: Field = Field::number("distance", "From A to B", Quantity::Distance, "12 km")
-    .range(10.0, site::FARTHEST, "below it nothing has to be reckoned, and no line of sight over the ground is longer")
+    .range(
+        SHORTEST,
+        site::FARTHEST,
+        "below it nothing has to be reckoned, and no line of sight over the ground is longer",
+    )
     .help("Along the ground, as on the map.")
-    .required();
+    .required()
+    .when("positions", GIVEN);
+/// Shortest line, metres.
+const SHORTEST: f64 = 10.0;
 
 const AT: Field = Field::number("distance", "Distance from A", Quantity::Distance, "3.4 km")
     .range(0.0, site::FARTHEST, "it lies between A and B")
-    .help("Along the line, from A.")
-    .required();
+    .help("Along the line; left empty where its position is entered.");
 const GROUND: Field = ground("ground", "Ground height").help("Above the same datum.").required();
 const COVER: Field = Field::number("cover", "Cover on it", Quantity::Height, "18 m")
     .range(0.0, 500.0, "nothing that grows or is built is higher")
@@ -123,9 +149,10 @@ const POINT_DOUBT: Field = Field::number("doubt", "Doubt of the ground", Quantit
 const NAME: Field = Field::text("name", "Name", 24, "it must fit beside the picture", "Kestrel Edge")
     .help("To find it again.")
     .under(MORE);
-const PROFILE: Field = Field::table("profile", "Points under the line", &[AT, GROUND, COVER, INCLUDED, GROWTH, POINT_DOUBT, NAME], "point")
+const PROFILE: Field = Field::table("profile", "Points under the line", &[AT, GROUND, COVER, INCLUDED, GROWTH, POINT_DOUBT, NAME, LATITUDE, LONGITUDE, EASTING, NORTHING], "point")
     .rows(1_000_000, "more would not fit into a phone")
-    .help("The high ones and what stands on them; every knoll near the line. Typed, pasted from a spreadsheet, or from a file.")
+    .help("The high ones and what stands on them; every knoll near the line. Typed, pasted from a spreadsheet, or from a file: GPX too.")
+    .file(gpx::reader)
     .example("3.4 km\t186\t18\n7.9 km\t204\t0")
     .required();
 
@@ -207,13 +234,23 @@ const SHARE_COVER: Promised =
 const SHARE_K: Promised =
     Promised::new("share_k", "Of that, air", "share that only another time of day or better k would take away");
 
+const LENGTH: Promised = Promised::new(
+    "length",
+    "Length of the line",
+    "from A to B along the level surface: as entered, or by the positions",
+);
+const AZIMUTH: Promised = Promised::new("azimuth", "Azimuth", "the way the line runs, from north over east");
+const RADIUS_IN_FORCE: Promised = Promised::new("radius", "Radius of the earth", "radius reckoned with");
+
 fn answer(asked: &Asked, answer: &mut Answer) {
-    case::check(asked, answer);
-    let Some(case) = Case::of(asked) else {
+    let Some(course) = Course::of(asked, answer) else { return };
+    let Some(spots) = rows::spots(asked, &course, answer) else { return };
+    say_heights(asked, answer);
+    let Some(case) = Case::of(asked, &course, &spots) else {
         answer.not_known("No ray joins the two stations at this k, or no point lies between them.".to_owned());
         return;
     };
     decide::decide(asked, &case, answer);
-    sheet::fill(asked, &case, answer);
+    sheet::fill(asked, &course, &case, answer);
     answer.figure = Some(figure::draw(asked, &case));
 }

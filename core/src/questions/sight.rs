@@ -12,6 +12,7 @@ use crate::quantity::unit::Quantity;
 use crate::question::field::{Field, Opt};
 use crate::question::{Answer, Asked, Caution, Promised, Question, site};
 use case::Case;
+pub use decide::range_words;
 
 pub const QUESTION: Question = Question {
     id: "sight",
@@ -19,24 +20,24 @@ pub const QUESTION: Question = Question {
     about: "Paces, tolerance, height of the line and sky: take it, shorten it, balance it or observe it both ways.",
     fields: &[
         site::DISTANCE,
-        TOLERANCE,
+        site::TOLERANCE,
         site::LINE_HEIGHT,
         site::SKY,
         OTHER,
-        COLLIMATION,
-        COLLIMATION_DOUBT,
+        site::COLLIMATION,
+        site::COLLIMATION_DOUBT,
         site::K,
         site::K_DOUBT,
-        K_SHARED,
+        site::K_SHARED,
         site::RADIUS,
         STAFF,
         INSTRUMENT,
         SLOPE,
         CLEARANCE,
-        SHARE,
+        site::SHARE,
         CLASS,
-        READING_DOUBT,
-        READING_GROWTH,
+        site::READING_DOUBT,
+        site::READING_GROWTH,
         DISTANCE_DOUBT,
         site::UNITS,
     ],
@@ -83,48 +84,20 @@ pub const QUESTION: Question = Question {
     answer,
 };
 
-const SETUP: &str = "The setup";
-const GROUND: &str = "Staff and ground";
+pub const GROUND: &str = "Staff and ground";
 
-const TOLERANCE: Field = Field::number("tolerance", "Tolerance", Quantity::SmallLength, "3 mm")
-    .range(0.00001, 10.0, "a hundredth of a millimetre is finer than any staff, ten metres is no tolerance")
-    .help("What the height may be out by because of this sight, or of this setup.")
-    .required()
-    .shared();
 const OTHER: Field = Field::number("other_distance", "The other sight of the setup", Quantity::Distance, "55 m")
     .range(site::NEAREST, site::FARTHEST, site::DISTANCES)
     .help("Back sight to this fore sight, or the other way round. Left empty: this sight stands alone, as an intermediate one does.")
-    .under(SETUP);
-const COLLIMATION: Field = Field::number(
-    "collimation",
-    "Collimation error of the level",
-    Quantity::Collimation,
-    "0.03 mm/m",
-)
-.range(-0.01, 0.01, "a level further out than 10 mm/m is broken")
-.help(
-    "From the last peg test, + where the line points up. Left empty: none is known, and the doubt below stands for it.",
-)
-.under(SETUP);
-const COLLIMATION_DOUBT: Field =
-    Field::number("collimation_doubt", "Doubt of the collimation error", Quantity::Collimation, "0.02 mm/m")
-        .range(0.0, 0.01, "a level further out than 10 mm/m is broken")
-        .help("Half-width that holds it 95 times in 100. By default what a level in adjustment is often allowed (common practice, no source).")
-        .default("0.05 mm/m")
-        .under(SETUP);
-const DISTANCE_DOUBT: Field = site::DISTANCE_DOUBT
+    .under("The setup");
+pub const DISTANCE_DOUBT: Field = site::DISTANCE_DOUBT
     .help("Pacing is good to a twentieth (common practice, no source). Only the bias depends on it.")
     .default("5 %");
-const K_SHARED: Field = Field::number("k_shared", "Correlation of k", Quantity::Share, "50 %")
-    .range(0.0, 1.0, "it is a share: at 0 % the two sights have each their own air, at 100 % the same")
-    .help("How much of the doubt of k is common to the two sights of a setup, or to the two ways (our assumption, no source).")
-    .default("50 %")
-    .under(site::AIR);
-const STAFF: Field = Field::number("staff_length", "Length of the staff", Quantity::Height, "4 m")
+pub const STAFF: Field = Field::number("staff_length", "Length of the staff", Quantity::Height, "4 m")
     .range(0.1, 20.0, "staffs are between a short scale and a long telescopic one")
     .help("Left empty: the top of the staff is no limit.")
     .under(GROUND);
-const INSTRUMENT: Field = Field::number("instrument_height", "Height of the instrument", Quantity::Height, "1.5 m")
+pub const INSTRUMENT: Field = Field::number("instrument_height", "Height of the instrument", Quantity::Height, "1.5 m")
     .range(0.0, 100.0, "of the line over the ground where the level stands")
     .help("Of its line over the ground where it stands. Left empty: the height of the line.")
     .under(GROUND);
@@ -137,11 +110,6 @@ const CLEARANCE: Field =
         .range(0.0, 100.0, "it is a height over the ground")
         .help("How close to the ground the line may come. Left empty: only the ground itself is in the way.")
         .under(GROUND);
-const SHARE: Field = Field::number("share", "Share of the tolerance", Quantity::Share, "50 %")
-    .range(0.01, 1.0, "it is a share of the tolerance")
-    .help("How much of the tolerance this sight may use: bias and doubt together. The rest is for everything else.")
-    .default("50 %")
-    .under(site::RULE);
 #[allow(clippy::indexing_slicing, reason = "worked out and checked while compiling")]
 const CLASS_OPTIONS: &[Opt] = &{
     let mut options = [Opt { value: "none", label: "no class: your own limit only" }; limits::CLASSES.len() + 1];
@@ -156,17 +124,6 @@ const CLASS: Field =
     Field::choice("limit_class", "Published class", CLASS_OPTIONS, "they are the classes whose limits we hold")
         .help("Its longest sight becomes one more limit. Your specification governs.")
         .default("none")
-        .under(site::RULE);
-const READING_DOUBT: Field = Field::number("reading_doubt", "Doubt of a reading", Quantity::SmallLength, "0.5 mm")
-    .range(0.0, 0.1, "a reading in doubt by more than a decimetre is no reading")
-    .help("Half-width at a short distance: half a millimetre for a centimetre staff read with care (common practice, no source).")
-    .default("0.5 mm")
-    .under(site::RULE);
-const READING_GROWTH: Field =
-    Field::number("reading_growth", "Growth of that doubt with distance", Quantity::Collimation, "0.01 mm/m")
-        .range(0.0, 0.001, "beyond 1 mm/m the staff cannot be read at all")
-        .help("1 mm in 100 m for an ordinary telescope in still air (common practice, no source).")
-        .default("0.01 mm/m")
         .under(site::RULE);
 const BIAS: Promised = Promised::new(
     "bias",

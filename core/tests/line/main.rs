@@ -8,6 +8,7 @@
 mod air;
 mod chances;
 mod figures;
+mod profiles;
 mod properties;
 #[path = "../common/random.rs"]
 mod random;

@@ -17,6 +17,8 @@ pub fn words(quantity: Quantity, si: f64, unit: &Unit, show: Show) -> String {
         Quantity::Radius if unit.symbol != "km" => format!("{}\u{a0}km", significant(si / 1000.0, 5)),
         Quantity::Collimation => show.tilt(si),
         Quantity::Gradient => slope(si),
+        Quantity::Latitude => show.position(si) + if si < 0.0 { " south" } else { " north" },
+        Quantity::Longitude => show.position(si) + if si < 0.0 { " west" } else { " east" },
         Quantity::Refraction if unit.scale != Scale::Ratio(1.0, 1.0) => format!("k = {}", show.k(si)),
         _ => String::new(),
     }

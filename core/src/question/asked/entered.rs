@@ -5,7 +5,7 @@ use crate::quantity::number::{self, NotANumber, Number};
 use crate::quantity::show::{Shown, significant};
 use crate::quantity::unit::{Quantity, System, Unit};
 use crate::question::answer::Fix;
-use crate::question::field::{Field, Kind};
+use crate::question::field::{Aid, Field, Kind};
 
 /// A number that was read.
 pub struct Entered {
@@ -27,13 +27,19 @@ pub fn read(
     text: &str,
     picked: &str,
 ) -> Result<Entered, Wrong> {
+    let signed = if quantity.is_position() { Some(signed(quantity, text)?) } else { None };
+    let text = signed.as_deref().unwrap_or(text);
     let usual = quantity.usual(system);
     let (digits, own) = split(quantity, text);
     let unit = if own.is_empty() { picked } else { &own };
     let bare = unit.is_empty();
     let found = if bare { Some(usual) } else { quantity.unit(unit) };
     let (number, unit) = match found {
-        Some(unit) => (number::number(&digits).map_err(|e| unreadable(field, text, &unit, e))?, unit),
+        Some(unit) => match staff(field, &digits, &unit).filter(|_| own.is_empty()) {
+            Some((number, true)) => (number, unit),
+            Some((number, false)) => return Err(bounced(field, text, &number, &unit)),
+            None => (number::number(&digits).map_err(|e| unreadable(field, text, &unit, e))?, unit),
+        },
         None => of_degrees(field, quantity, text).unwrap_or_else(|| Err(no_unit(field, quantity, &digits, unit)))?,
     };
     let unit = slope_as_ratio(quantity, &number, bare).unwrap_or(unit);
@@ -46,6 +52,33 @@ pub fn read(
     Ok(Entered { number, unit, bare, si })
 }
 
+/// A staff reading typed without its point, which stands after the first digit in metres and after the second in feet;
+/// and whether it is certain: four digits are, five may be four of which one came twice.
+fn staff(field: &Field, digits: &str, unit: &Unit) -> Option<(Number, bool)> {
+    let before = match unit.symbol {
+        "m" => 1,
+        "ft" | "ftUS" => 2,
+        _ => return None,
+    };
+    let plain = digits.trim_start_matches('-');
+    let typed = field.aid == Some(Aid::Staff)
+        && matches!(plain.len(), 4 | 5)
+        && digits.len() - plain.len() < 2
+        && plain.bytes().all(|b| b.is_ascii_digit());
+    let (whole, rest) = plain.split_at_checked(before).filter(|_| typed)?;
+    let text = format!("{}{whole}.{rest}", if plain.len() < digits.len() { "-" } else { "" });
+    Some((number::number(&text).ok()?, plain.len() == 4))
+}
+
+fn bounced(field: &'static Field, text: &str, number: &Number, unit: &Unit) -> Wrong {
+    let message = format!(
+        "“{}” has five digits: a key may have counted twice. Enter {} with its point.",
+        clip(text),
+        the(field.label)
+    );
+    (message, vec![fix(field, &number.text, unit)])
+}
+
 /// The text that says the same by itself; `bare` keeps the number without its unit.
 pub fn written(number: &Number, unit: &Unit, bare: bool) -> String {
     match unit.symbol {
@@ -54,6 +87,27 @@ pub fn written(number: &Number, unit: &Unit, bare: bool) -> String {
         "1/" => format!("1/{}", number.text),
         symbol => format!("{} {symbol}", number.text),
     }
+}
+
+/// Half of a position with a sign in place of its letter: `52°10′ N`, `W 5.2`.
+fn signed(quantity: Quantity, text: &str) -> Result<String, Wrong> {
+    // A letter that stands alone: gon ends in one that does not.
+    let alone = |letter: Option<char>, next: Option<char>| {
+        letter.filter(|_| !next.is_some_and(char::is_alphabetic)).filter(|c| matches!(c, 'N' | 'S' | 'E' | 'W'))
+    };
+    let upper = text.to_ascii_uppercase();
+    let first = alone(upper.chars().next(), upper.chars().nth(1));
+    let last = alone(upper.chars().next_back(), upper.chars().nth_back(1)).filter(|_| first.is_none());
+    let Some(letter) = first.or(last) else { return Ok(text.to_owned()) };
+    let rest = text.get(usize::from(first.is_some())..text.len() - usize::from(last.is_some())).unwrap_or("").trim();
+    if matches!(letter, 'N' | 'S') != (quantity == Quantity::Latitude) {
+        let text = clip(text);
+        return Err((format!("“{text}”: N and S go with a latitude, E and W with a longitude."), vec![]));
+    }
+    if rest.starts_with(['-', '−', '–', '+']) {
+        return Err((format!("“{}” has a sign and a letter. Enter one of them.", clip(text)), vec![]));
+    }
+    Ok(if matches!(letter, 'S' | 'W') { format!("-{rest}") } else { rest.to_owned() })
 }
 
 /// Number and unit of a text; also `1 in 20`, and for k the forms `m = 0.07`, `k 0.13`.

@@ -1,7 +1,7 @@
 //! A table: what a person types row by row, or pastes whole from a spreadsheet or a file of separated values.
 
 use super::cell::{What, lower, missing, take};
-use crate::quantity::unit::System;
+use crate::quantity::unit::{System, Unit};
 use crate::question::answer::{Cell, Fix, Problem};
 use crate::question::field::{Field, Kind};
 
@@ -27,6 +27,13 @@ impl Row {
     /// SI value of a number, entered or by default.
     pub fn number(&self, column: &Field) -> Option<f64> {
         self.what(column)?.number()
+    }
+    /// A number with the unit it was read in.
+    pub fn measured(&self, column: &Field) -> Option<(f64, &Unit)> {
+        match self.what(column)? {
+            What::Number(si, unit) => Some((*si, unit)),
+            _ => None,
+        }
     }
     /// What was chosen; empty where nothing was.
     pub fn choice(&self, column: &Field) -> &'static str {
@@ -61,13 +68,14 @@ pub struct Table {
     pub notes: Vec<String>,
 }
 
-/// Reads `text`; `picked` is the unit chosen for a column.
+/// Reads `text`; `picked` is the unit chosen for a column. Of a column that is not asked nothing is wrong.
 pub fn read(
     field: &'static Field,
     columns: &'static [Field],
     system: System,
     text: &str,
     picked: impl Fn(&Field) -> String,
+    asks: impl Fn(&Field) -> bool,
 ) -> Table {
     let mut units: Vec<String> = columns.iter().map(|c| unit_of(c, system, &picked(c))).collect();
     let mut notes = vec![];
@@ -105,6 +113,7 @@ pub fn read(
             table.rows.push(row);
         }
     }
+    table.problems.retain(|p| p.cell.and_then(|cell| columns.get(cell.column)).is_none_or(&asks));
     if table.problems.len() > TOLD {
         let more = table.problems.len() - TOLD;
         table.problems.truncate(TOLD);

@@ -1,8 +1,10 @@
 //! The line as entered, in the air of the day and of the night, over every point.
 
+use super::position::{Course, SEPARATION};
+use super::rows::Spot;
 use super::{
-    AT, CHANCE, COVER, COVER_DOUBT, DISTANCE, GROUND, GROUND_A, GROUND_B, GROUND_DOUBT, GROUND_SHARED, GROWTH,
-    HEIGHT_A, HEIGHT_B, INCLUDED, NAME, NIGHT_K, NIGHT_K_DOUBT, OVER, POINT_DOUBT, PROFILE, RULES, WANTED,
+    CHANCE, COVER, COVER_DOUBT, GROUND, GROUND_A, GROUND_B, GROUND_DOUBT, GROUND_SHARED, GROWTH, HEIGHT_A, HEIGHT_B,
+    INCLUDED, NAME, NIGHT_K, NIGHT_K_DOUBT, OVER, POINT_DOUBT, RULES, WANTED,
 };
 use crate::air::guide::{self, KRange, Sky};
 use crate::doubt::Estimate;
@@ -11,10 +13,9 @@ use crate::line::along::Along;
 use crate::line::chance::{self, chance};
 use crate::line::profile::Profile;
 use crate::order::sort;
-use crate::quantity::show::Round;
 use crate::quantity::{Coefficient, Metres};
 use crate::question::field::Field;
-use crate::question::{Answer, Asked, site};
+use crate::question::{Asked, site};
 
 /// Within this share of the line from a station the clearance wanted falls off evenly to nothing there, as the line must
 /// come down to its stand. A rule of this project.
@@ -70,30 +71,6 @@ pub struct Case {
     pub needed_m: Vec<f64>,
 }
 
-/// Names what does not fit the line, at its row.
-pub fn check(asked: &Asked, answer: &mut Answer) {
-    let (s, show) = (asked.must(&DISTANCE), asked.show());
-    let mut rows: Vec<(f64, usize)> =
-        asked.rows(&PROFILE).iter().map(|row| (row.number(&AT).unwrap_or(0.0), row.line + 1)).collect();
-    let outside: Vec<String> = rows.iter().filter(|r| r.0 <= 0.0 || r.0 >= s).map(|r| r.1.to_string()).collect();
-    if !outside.is_empty() {
-        answer.caution(format!("Not between A and B, and left out: point {}.", outside.join(", ")));
-    }
-    sort(&mut rows, |row| [row.0, 0.0]);
-    for (one, other) in rows.iter().zip(rows.iter().skip(1)).filter(|(one, other)| one.0 == other.0).take(5) {
-        answer.caution(format!(
-            "Points {} and {} lie at the same distance: the higher counts.",
-            one.1.min(other.1),
-            one.1.max(other.1)
-        ));
-    }
-    let ends = [rows.first(), rows.iter().rfind(|r| r.0 < s)].map(|end| end.map_or(0.0, |r| r.0));
-    if !rows.is_empty() && (ends[0] > 0.25 * s || ends[1] < 0.75 * s) {
-        let (from, to) = (show.distance(ends[0], Round::Near), show.distance(ends[1], Round::Near));
-        answer.caution(format!("The points run from {from} to {to} only: nothing is known of the rest of the line."));
-    }
-}
-
 /// Whose the air is: entered for the day or the night, and the guide's sky.
 struct Entered<'a> {
     k: &'a Field,
@@ -103,14 +80,14 @@ struct Entered<'a> {
 
 impl Case {
     /// `None` where no ray joins the stations, or no point lies between them.
-    pub fn of(asked: &Asked) -> Option<Case> {
+    pub fn of(asked: &Asked, course: &Course, spots: &[Spot]) -> Option<Case> {
         let a = asked.must(&GROUND_A) + asked.must(&HEIGHT_A);
         let b = asked.must(&GROUND_B) + asked.must(&HEIGHT_B);
-        let s = asked.must(&DISTANCE);
-        let r = site::radius(asked).0.0;
+        let s = course.s;
+        let (r, _) = course.radius(asked);
         let rule = RULES.iter().find(|r| r.0 == asked.choice(&OVER)).map_or(0.0, |r| r.1);
         let wanted = asked.number(&WANTED).unwrap_or(rule);
-        let points = points(asked, s, wanted);
+        let points = points(asked, spots, s, wanted);
         let common = asked.must(&GROUND_SHARED);
         let at_m: Vec<f64> = points.iter().map(|p| p.at).collect();
         let top_m: Vec<f64> = points.iter().map(|p| p.top).collect();
@@ -210,27 +187,27 @@ fn in_force(asked: &Asked, entered: &Entered, guide: KRange, varies: bool) -> (K
     (site::entered_or(value, half, guide), source)
 }
 
-/// The points between the stations, by distance.
-fn points(asked: &Asked, s: f64, wanted: f64) -> Vec<Point> {
+/// The points, by distance.
+fn points(asked: &Asked, spots: &[Spot], s: f64, wanted: f64) -> Vec<Point> {
     let (general, cover_doubt) = (asked.must(&GROUND_DOUBT), asked.must(&COVER_DOUBT));
-    let mut points: Vec<Point> = asked
-        .rows(&PROFILE)
+    let lower = asked.number(&SEPARATION).unwrap_or(0.0);
+    let mut points: Vec<Point> = spots
         .iter()
-        .map(|row| {
+        .map(|&Spot { row, at }| {
             let of = |column: &Field| row.number(column).unwrap_or(0.0);
             let included = row.choice(&INCLUDED) == "yes";
             let cover = if included { 0.0 } else { of(&COVER) };
+            let ground = of(&GROUND) - lower;
             Point {
-                at: of(&AT),
-                ground: of(&GROUND),
-                top: of(&GROUND) + cover + of(&GROWTH),
-                wanted: wanted * (of(&AT).min(s - of(&AT)) / (NEAR_STATION * s)).clamp(0.0, 1.0),
+                at,
+                ground,
+                top: ground + cover + of(&GROWTH),
+                wanted: wanted * (at.min(s - at) / (NEAR_STATION * s)).clamp(0.0, 1.0),
                 doubt: row.number(&POINT_DOUBT).unwrap_or(general),
                 cover_doubt: if of(&COVER) + of(&GROWTH) > 0.0 { cover_doubt } else { 0.0 },
                 name: row.text(&NAME).to_owned(),
             }
         })
-        .filter(|p| p.at > 0.0 && p.at < s)
         .collect();
     sort(&mut points, |point| [point.at, 0.0]);
     points

@@ -5,19 +5,22 @@ use super::decide::percent;
 use super::*;
 use crate::order::sort;
 use crate::quantity::Metres;
-use crate::quantity::show::{Round, Show, Shown, significant};
+use crate::quantity::show::{Round, Show, Shown, places, significant};
 use crate::question::answer::{Doubt, Table};
 use crate::question::pencil::line;
+use std::f64::consts::PI;
 
 /// Points of the table at most: the worst ones where there are more.
 const SHOWN: usize = 60;
 
-pub fn fill(asked: &Asked, case: &Case, answer: &mut Answer) {
+pub fn fill(asked: &Asked, course: &Course, case: &Case, answer: &mut Answer) {
     let show = asked.show();
     let half = case.half(case.day.worst);
     results(case, half, show, answer);
+    whereabouts(asked, course, show, answer);
     answer.tables.push(remedies(case, half, show));
     answer.tables.push(points(case, show));
+    course.working(&mut answer.working);
     working(case, answer);
     if let Some(worst) = case.worst() {
         let bare = case.line.least_when_cut(case.profile(), case.day.worst, Metres(worst.ground));
@@ -67,6 +70,24 @@ fn results(case: &Case, half: f64, show: Show, answer: &mut Answer) {
         let shown = Shown { text: significant(share * 100.0, 2), unit: "%" };
         answer.result(promise, Some(share), shown, None, of(promise));
     }
+}
+
+/// Where the line runs, and the earth's radius there.
+fn whereabouts(asked: &Asked, course: &Course, show: Show, answer: &mut Answer) {
+    answer.result(&LENGTH, Some(course.s), show.height_words(course.s), None, LENGTH.meaning.to_owned());
+    match course.direction() {
+        Some((angle, from)) => {
+            let shown = Shown { text: places(angle.0 * 180.0 / PI, 4), unit: "°" };
+            answer.result(&AZIMUTH, Some(angle.0), shown, None, from.to_owned());
+        }
+        None => {
+            let shown = Shown { text: "not known".to_owned(), unit: "" };
+            answer.result(&AZIMUTH, None, shown, None, "only the positions of A and B tell".to_owned());
+        }
+    }
+    let (radius, source) = course.radius(asked);
+    let shown = Shown { text: significant(radius / 1000.0, 5), unit: "km" };
+    answer.result(&RADIUS_IN_FORCE, Some(radius), shown, None, source.to_owned());
 }
 
 /// Raise A, B, both alike, for the clearance wanted and so much more.

@@ -1,11 +1,9 @@
 //! The sight as entered, and what it loses at any distance.
 
-use super::{
-    COLLIMATION, COLLIMATION_DOUBT, DISTANCE_DOUBT, K_SHARED, OTHER, READING_DOUBT, READING_GROWTH, SHARE, TOLERANCE,
-};
+use super::{DISTANCE_DOUBT, OTHER};
 use crate::air::guide::Sky;
 use crate::doubt::Estimate;
-use crate::quantity::{Metres, Tilt};
+use crate::quantity::Metres;
 use crate::question::{Asked, site};
 use crate::sight::bounds::{Stretch, joined, places, stretches};
 use crate::sight::budget::{Budget, Part, Term, total};
@@ -37,19 +35,8 @@ pub enum Count {
 impl Case {
     pub fn of(asked: &Asked, sky: Sky) -> Case {
         let air = site::air(asked, sky);
-        let (radius, radius_doubt) = site::radius(asked);
-        let budget = Budget {
-            k: air.k,
-            common: asked.must(&K_SHARED),
-            radius,
-            radius_doubt,
-            collimation: Tilt(asked.number(&COLLIMATION).unwrap_or(0.0)),
-            collimation_doubt: Tilt(asked.must(&COLLIMATION_DOUBT)),
-            reading: Metres(asked.must(&READING_DOUBT)),
-            reading_growth: Tilt(asked.must(&READING_GROWTH)),
-            distance_doubt: asked.must(&DISTANCE_DOUBT),
-        };
-        let (tolerance, share) = (asked.must(&TOLERANCE), asked.must(&SHARE));
+        let budget = site::budget(asked, air.k, asked.must(&DISTANCE_DOUBT));
+        let (tolerance, share) = (asked.must(&site::TOLERANCE), asked.must(&site::SHARE));
         let distance = asked.must(&site::DISTANCE);
         let other = asked.number(&OTHER);
         let allowed = share * tolerance;

@@ -16,7 +16,7 @@ pub fn fill(asked: &Asked, case: &Case, limits: &[Limit], answer: &mut Answer) {
     let error = case.error(case.distance);
     sum(case, &error, show, answer);
     reaches(case, show, answer);
-    each(case, &parts, asked.number(&COLLIMATION).is_some(), show, answer);
+    each(case, &parts, asked.number(&site::COLLIMATION).is_some(), show, answer);
     answer.tables.push(terms(limits, show));
     answer.tables.push(contributions(&parts, error, show));
     answer.working = working::lines(case, &parts, error);
@@ -150,7 +150,7 @@ pub fn name(term: Term) -> &'static str {
 }
 
 fn notes(asked: &Asked, case: &Case, answer: &mut Answer) {
-    if !asked.given(&COLLIMATION) {
+    if !asked.given(&site::COLLIMATION) {
         answer.note(
             "No collimation error was entered: a peg test today would take the largest doubt out of most setups.",
         );
