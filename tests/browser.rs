@@ -5,6 +5,8 @@
 
 #[path = "browser/access.rs"]
 mod access;
+#[path = "browser/book.rs"]
+mod book;
 #[path = "browser/boundary.rs"]
 mod boundary;
 #[path = "browser/decision.rs"]
@@ -21,6 +23,8 @@ mod network;
 mod offline;
 #[path = "browser/pictures.rs"]
 mod pictures;
+#[path = "browser/profile.rs"]
+mod profile;
 #[path = "browser/shapes.rs"]
 mod shapes;
 #[path = "browser/table.rs"]
@@ -88,7 +92,7 @@ impl Stage<'_> {
 /// A group of steps, by its name.
 type Group = (&'static str, fn(&mut Tally, &Stage));
 
-const GROUPS: [Group; 11] = [
+const GROUPS: [Group; 13] = [
     ("boundary", boundary::run),
     ("network", network::run),
     ("decision", decision::run),
@@ -100,6 +104,8 @@ const GROUPS: [Group; 11] = [
     ("access", access::run),
     ("pictures", pictures::run),
     ("table", table::run),
+    ("profile", profile::run),
+    ("book", book::run),
 ];
 
 fn main() {

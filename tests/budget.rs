@@ -46,6 +46,8 @@ fn main() -> Result<()> {
     browser.cdp("Page.addScriptToEvaluateOnNewDocument", json!({ "source": WATCH }))?;
     row("answer to a keystroke and the page laid out, Chromium", &typed(&browser, &site, 1)?, 5.0);
     row("the same at 6× CPU throttle", &typed(&browser, &site, 6)?, 16.0);
+    row("a reading's digit in a book of 500 setups, Chromium", &booked(&browser, &site, 1)?, 5.0);
+    row("the same at 6× CPU throttle", &booked(&browser, &site, 6)?, 16.0);
     row("first visit usable, slow 4G, 4× CPU throttle", &cold(&browser, &site)?, 1500.0);
     row("start without signal, 6× CPU throttle", &warm(&browser, &site)?, 500.0);
     Ok(())
@@ -77,6 +79,24 @@ fn typed(browser: &Browser, site: &Site, throttle: u32) -> Result<Vec<f64>> {
     browser.wait("document.documentElement.dataset.offline")?;
     slow_down(browser, throttle)?;
     let times = browser.js(TYPE);
+    slow_down(browser, 1)?;
+    times?.as_array().ok_or("no times")?.iter().map(|time| time.as_f64().ok_or("no time".to_owned())).collect()
+}
+
+/// Types into the last row of a long book, as TYPE does; the decision follows when the keys pause.
+fn booked(browser: &Browser, site: &Site, throttle: u32) -> Result<Vec<f64>> {
+    let server = Server::start(site.clone(), 0).map_err(words)?;
+    browser.go(&format!("{}#book", server.url()))?;
+    browser.wait("document.documentElement.dataset.offline")?;
+    let rows: Vec<String> = (0..500).map(|i| format!("CP {i}\t1234\t\t\t30\nCP {}\t\t\t1432\t31", i + 1)).collect();
+    let give = "document.querySelector('[data-do=bring]').click();
+        const area = document.querySelector('dialog textarea'); area.value = ROWS;
+        area.dispatchEvent(new Event('input')); document.querySelector('.ways button:last-child').click();
+        document.querySelector('.row:nth-child(1000) .brief').click(); return 0;";
+    browser.js(&give.replace("ROWS", &json!(rows.join("\n")).to_string()))?;
+    browser.wait("document.querySelector('#book-999-3')")?;
+    slow_down(browser, throttle)?;
+    let times = browser.js(&TYPE.replace("#field-distance", "#book-999-3").replace("40 + i", "1400 + i"));
     slow_down(browser, 1)?;
     times?.as_array().ok_or("no times")?.iter().map(|time| time.as_f64().ok_or("no time".to_owned())).collect()
 }

@@ -31,7 +31,15 @@ fn audit(stage: &Stage, axe: &str, theme: &str) -> Result<()> {
     let browser = stage.browser;
     for width in [320, 412] {
         browser.viewport(width, 915)?;
-        for place in ["", &format!("#sight?{ASKED}"), &format!("#sight?{WRONG}"), "#reading?reading=1.5&distance=300"] {
+        for place in [
+            "",
+            &format!("#sight?{ASKED}"),
+            &format!("#sight?{WRONG}"),
+            "#reading?reading=1.5&distance=300",
+            // A table: the row to come is open, with its boxes; one that was booked is wrong; positions are asked.
+            "#clearance?positions=latlon&ground_a=1&profile=abc%09%09%09",
+            "#clearance?ground_a=1&ground_b=1&distance=5+km&profile=2+km%090%09%0A3+km%091%09",
+        ] {
             let _server = stage.open_at(place)?;
             browser.js(&format!(
                 "for (const each of document.querySelectorAll('details')) each.open = true;

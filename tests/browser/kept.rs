@@ -9,7 +9,7 @@ use farstaff_www::serve::Server;
 use serde_json::json;
 use std::rc::Rc;
 
-const ASIDE: &str = "document.querySelector('#aside').checkVisibility()";
+const ASIDE: &str = "document.querySelector('#kept-aside').checkVisibility()";
 
 pub fn run(tally: &mut Tally, stage: &Stage) {
     tally.step("the last entry survives a closed tab", || closed_tab(stage));
@@ -17,6 +17,7 @@ pub fn run(tally: &mut Tally, stage: &Stage) {
     if stage.browser.engine() != Engine::WebKit {
         tally.step("the last entry survives a killed browser", || killed(stage));
     }
+    tally.step("a calculator that was stopped starts anew with the entry", || stopped(stage));
     tally.step("a full disk is reported, and the page still answers", || full(stage));
     tally.step("a damaged record is kept aside, and the page opens", || record(stage));
     tally.step("a damaged link is kept aside, and the page opens", || link(stage));
@@ -60,6 +61,17 @@ fn killed(stage: &Stage) -> Result<()> {
     own.decides("sight", "distance=81.5&tolerance=3").map(drop)
 }
 
+/// Spoils the calculator's memory, as a browser's fault would.
+fn stopped(stage: &Stage) -> Result<()> {
+    let _server = stage.open_at("#sight?tolerance=3+mm")?;
+    stage.browser.js("const core = await import('./core.js'); const { memory } = await core.default();
+        new Uint8Array(memory.buffer).fill(255); document.documentElement.dataset.spoilt = '1'; return 0;")?;
+    // One key: the page is away before a second.
+    type_distance(stage, "9")?;
+    stage.browser.wait("!document.documentElement.dataset.spoilt && document.documentElement.dataset.ready")?;
+    stage.decides("sight", "distance=9&tolerance=3").map(drop)
+}
+
 fn full(stage: &Stage) -> Result<()> {
     let browser = stage.browser;
     let server = stage.serve()?;
@@ -86,7 +98,7 @@ fn full(stage: &Stage) -> Result<()> {
 }
 
 /// Works on the page's own store, from a file of the same origin that runs no script of the page.
-fn in_store(stage: &Stage, server: &Server, version: u32, body: &str) -> Result<()> {
+pub fn in_store(stage: &Stage, server: &Server, version: u32, body: &str) -> Result<()> {
     stage.browser.go(&format!("{}icon.svg", server.url()))?;
     stage.browser.js(&format!(
         "const request = indexedDB.open('farstaff', {version}); let made = false;
@@ -97,6 +109,11 @@ fn in_store(stage: &Stage, server: &Server, version: u32, body: &str) -> Result<
         db.close(); return 0;"
     ))?;
     Ok(())
+}
+
+/// Waits until a message says so.
+fn said(stage: &Stage, word: &str) -> Result<()> {
+    stage.browser.wait(&format!("document.querySelector('#messages').textContent.includes('{word}')"))
 }
 
 fn record(stage: &Stage) -> Result<()> {
@@ -110,7 +127,7 @@ fn record(stage: &Stage) -> Result<()> {
     browser.go(&format!("{}#sight", server.url()))?;
     stage.usable()?;
     browser.wait(ASIDE)?;
-    check(browser.text("#messages")?.contains("damaged"), || "nothing is said".to_owned())?;
+    said(stage, "damaged")?;
     // It opens and answers; what the site keeps was not damaged.
     type_distance(stage, "60")?;
     stage.decides("sight", ASKED)?;
@@ -141,12 +158,12 @@ fn link(stage: &Stage) -> Result<()> {
         browser.wait(ASIDE)?;
         let text = browser.js("return document.querySelector('#aside-text').value")?;
         check(text.as_str().is_some_and(|text| text.contains(kept)), || format!("{place}: kept {text}"))?;
-        check(browser.text("#messages")?.contains("link"), || "nothing is said".to_owned())?;
+        said(stage, "link")?;
         stage.decides("sight", entry)?;
     }
     let _server = stage.open_at("#no_such_question?distance=60")?;
     browser.wait(ASIDE)?;
-    check(browser.text("#messages")?.contains("no question"), || "nothing is said".to_owned())?;
+    said(stage, "no question")?;
     browser.tap("#questions a")?;
     browser.wait("document.querySelector('#field-distance')")
 }

@@ -20,6 +20,7 @@ pub fn run(tally: &mut Tally, stage: &Stage) {
         stage.browser.reload()?;
         stage.usable()
     });
+    tally.step("a copy the browser dropped is brought back", || dropped(stage));
     tally.step("a new version is offered, waits, and is taken when wanted", || new_version(stage));
     tally.step("half a new version leaves the old one at work", || half_version(stage));
 }
@@ -37,6 +38,19 @@ fn stop(server: Server) -> Result<()> {
     let port = server.port();
     drop(server);
     check(TcpStream::connect(("127.0.0.1", port)).is_err(), || "the server still answers".to_owned())
+}
+
+/// A browser may empty the copy and leave its worker: the page then comes from the server, and the copy again.
+fn dropped(stage: &Stage) -> Result<()> {
+    let browser = stage.browser;
+    let server = installed(stage)?;
+    browser.js("for (const name of await caches.keys()) await caches.delete(name); return 0;")?;
+    browser.reload()?;
+    stage.usable()?;
+    browser.wait("document.documentElement.dataset.offline")?;
+    stop(server)?;
+    browser.reload()?;
+    stage.usable()
 }
 
 fn second_build(stage: &Stage) -> Result<Site> {

@@ -14,7 +14,7 @@ const LINK_AT_MOST: usize = 8192;
 /// Rows that are listed without being asked for.
 const LISTED: usize = 2000;
 
-/// The table the steps work on: the first there is, whatever it asks.
+/// The table the steps work on: the first that must be filled, whatever it asks.
 #[derive(Clone, Copy)]
 struct Table {
     question: &'static Question,
@@ -41,13 +41,14 @@ pub fn run(tally: &mut Tally, stage: &Stage) {
 }
 
 fn find() -> Result<Table> {
-    let tables = catalogue().questions.iter().flat_map(|&question| {
-        question.fields.iter().filter_map(move |field| match field.kind {
-            Kind::Table { columns, .. } => Some(Table { question, field, columns }),
+    let mut tables = catalogue().questions.iter().flat_map(|&question| {
+        question.fields.iter().filter(|field| field.required).filter_map(move |field| match field.kind {
+            // One that is booked fills itself in part; book.rs has its steps.
+            Kind::Table { columns, booking: None, .. } => Some(Table { question, field, columns }),
             _ => None,
         })
     });
-    tables.into_iter().next().ok_or("no question has a table".to_owned())
+    tables.next().ok_or("no question needs a table".to_owned())
 }
 
 struct Work<'a> {
@@ -88,7 +89,8 @@ impl Work<'_> {
 
     /// Columns that a phone shows at once.
     fn plain(&self) -> Vec<usize> {
-        (0..self.table.columns.len()).filter(|at| self.table.columns[*at].group.is_empty()).collect()
+        let plain = |column: &Field| column.group.is_empty() && column.when.is_none();
+        (0..self.table.columns.len()).filter(|at| plain(&self.table.columns[*at])).collect()
     }
 
     fn first_number(&self) -> Result<usize> {

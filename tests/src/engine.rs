@@ -62,6 +62,8 @@ impl Display for Engine {
 pub enum Key {
     Tab = 0xE004,
     Enter = 0xE006,
+    Home = 0xE011,
+    Right = 0xE014,
     Up = 0xE013,
 }
 

@@ -1,5 +1,5 @@
 // Shows an answer, top down: the decision, what has to be put right, the numbers, the picture, what it all rests on.
-import { byId, copy, fill, fixKeys, within } from "./dom.js";
+import { byId, copy, fill, fixKeys, key, within } from "./dom.js";
 import { unitName } from "./field.js";
 import { drawFigure } from "./figure.js";
 import { cellsOf, heading, isStruck, linesOf, shown } from "./rows.js";
@@ -10,6 +10,7 @@ import { cellsOf, heading, isStruck, linesOf, shown } from "./rows.js";
 /** @typedef {import("./core.js").Note} Note */
 /** @typedef {import("./core.js").Problem} Problem */
 /** @typedef {import("./core.js").Fix} Fix */
+/** @typedef {import("./core.js").Offer} Offer */
 /** @typedef {import("./core.js").Cell} Cell */
 
 const PAUSE_MS = 80; // between keys: the decision is there at once, what it rests on when the keys pause
@@ -20,7 +21,7 @@ let restOf = ""; // whose it is
 /**
  * @param {Question} question @param {Answer} answer
  * @param {Problem[]} problems those that may be shown now
- * @param {{ fix: (fix: Fix) => void, focus: (field: string, cell?: Cell) => void }} act
+ * @param {{ fix: (fix: Fix) => void, take: (offer: Offer) => void, focus: (field: string, cell?: Cell) => void }} act
  */
 export function showAnswer(question, answer, problems, act) {
   showVerdict(answer);
@@ -35,7 +36,7 @@ export function showAnswer(question, answer, problems, act) {
   rest = () => {
     rest = () => {};
     restOf = of;
-    showRest(answer, act.fix);
+    showRest(answer, act);
   };
   const starting = !document.documentElement.dataset.ready; // the first picture comes before what can wait
   if (starting || byId("form").contains(document.activeElement)) resting = setTimeout(() => rest(), PAUSE_MS);
@@ -48,9 +49,16 @@ export function showAll() {
   rest();
 }
 
-/** What the decision rests on. @param {Answer} answer @param {(fix: Fix) => void} fix */
-function showRest(answer, fix) {
+/** What the decision rests on.
+ * @param {Answer} answer @param {{ fix: (fix: Fix) => void, take: (offer: Offer) => void }} act */
+function showRest(answer, { fix, take }) {
   showList("results", "dl", answer.results.map(result));
+  showList("offers", "ul", answer.offers.map((offer) => {
+    const item = copy("t-note");
+    within(item, "p").textContent = offer.text;
+    within(item, ".keys").append(key(offer.label, () => take(offer)));
+    return item;
+  }));
   const behind = answer.tables.filter((each) => each.name === answer.figure?.table);
   showList("tables", "", answer.tables.filter((each) => !behind.includes(each)).map(table));
   showFigure(answer, behind);

@@ -2,11 +2,12 @@
 import init, { ask, catalogue } from "./core.js";
 import { showAll, showAnswer, showEntered, showStanding, spoken } from "./answer.js";
 import { byId, copy, download, fill, say, within } from "./dom.js";
-import { columnsOf, infoOf, namesIn, unitName, unitsOf, usualUnit } from "./field.js";
+import { columnsOf, infoOf, isAsked, namesIn, unitName, unitsOf, usualUnit } from "./field.js";
 import { buildForm } from "./form.js";
 import { hint, startHint } from "./install.js";
 import { LINK_AT_MOST, readLink } from "./link.js";
 import { startOffline } from "./offline.js";
+import { startRestart } from "./restart.js";
 import { startSettings } from "./settings.js";
 import { asideText, asides, dropAsides, keepAside, openStore, record, recordsOf, save, saved } from "./store.js";
 
@@ -66,6 +67,7 @@ function units() {
 /** Puts the entry in view into its records and on disk. */
 function keep() {
   if (!question) return;
+  own().when = Date.now();
   const [shared, mine] = [namesOf(question, true), namesOf(question, false)];
   for (const [kept, names] of /** @type {const} */ ([[site(), shared], [own(), mine]])) {
     for (const name of names) delete kept.entry[name];
@@ -142,15 +144,21 @@ function refresh() {
   const start = performance.now();
   answer = ask(question.id, entry);
   took = performance.now() - start;
-  tried ||= question.fields.every((field) => !field.required || entry[field.name]);
+  tell();
+}
+
+/** Shows what came back, as far as it may be said by now. */
+function tell() {
+  if (!question) return;
+  tried ||= question.fields.every((field) => !field.required || entry[field.name] || !isAsked(field, answer.read));
   const problems = answer.problems.filter(({ field, cell }) => tried || cell || visited.has(field));
   const typing = document.activeElement?.getAttribute("name") ?? ""; // nothing is wrong yet with what is being typed
   const shown = problems.filter(({ field, cell }) =>
     (field !== typing || visited.has(typing)) && (!cell || form?.ripe(field, cell)));
-  form?.tell(answer.read, shown, answer.notes.filter((note) => note.fixes.length > 0));
-  showAnswer(question, answer, shown, { fix, focus: (name, cell) => form?.focus(name, cell) });
-  for (const list of /** @type {const} */ (["undo", "redo"])) {
-    /** @type {HTMLButtonElement} */ (byId(list)).disabled = own()[list].length === 0;
+  form?.tell(answer.read, shown, answer.notes.filter((note) => note.fixes.length > 0), answer.booked);
+  showAnswer(question, answer, shown, { fix, take, focus: (name, cell) => form?.focus(name, cell) });
+  for (const key of /** @type {NodeListOf<HTMLButtonElement>} */ (byId("form").querySelectorAll("[data-travel]"))) {
+    key.disabled = own()[key.dataset.travel === "redo" ? "redo" : "undo"].length === 0;
   }
   clearTimeout(settling);
   settling = setTimeout(settle, SETTLED_MS);
@@ -180,6 +188,14 @@ function fix({ field, cell, text, unit }) {
   form?.focus(field);
 }
 
+/** Puts in what an answer hands on, in one step. @param {import("./core.js").Offer} offer */
+function take({ label, values }) {
+  change(Object.fromEntries(values.flatMap(({ field, text, unit }) =>
+    (unit ? [[field, text], [unitName(field), unit]] : [[field, text]]))));
+  byId("verdict").focus();
+  say(`${label}: done.`, { "Undo": () => travel("undo", "redo") });
+}
+
 /** What the calculator makes of some texts alone. @param {Entry} patch */
 const read = (patch) => ask(question?.id ?? "", { [all.units_field]: units(), ...patch });
 
@@ -195,12 +211,13 @@ function tidied(of, given) {
 function adopt(name) {
   const read = answer.read.find((each) => each.field === name);
   const typed = entry[name]?.trim();
-  if (!typed || !/\p{L}|[%°′″‰]/u.test(typed)) return; // no unit was typed
-  if (!read?.unit || read.text === typed || answer.problems.some((each) => each.field === name)) return;
+  if (!typed || !read?.unit || !/\p{L}|[%°′″‰]/u.test(typed)) return false; // no unit was typed
+  if (read.text === typed || answer.problems.some((each) => each.field === name)) return false;
   entry[name] = read.text;
   entry[unitName(name)] = read.unit;
   form?.write(entry);
   if (!earlier) keep();
+  return true;
 }
 
 /** A field is done with. Showing what is wrong moves the page, so not under a finger. @param {string} name */
@@ -214,8 +231,8 @@ function left(name) {
     if (waiting) refresh();
     visited.add(name);
     step = "";
-    adopt(name);
-    refresh();
+    if (adopt(name)) refresh();
+    else tell();
   });
 }
 
@@ -243,10 +260,37 @@ function route() {
   tried = false;
   showStanding(question);
   entry = keptEntry(question);
-  const around = { quantities: all.quantities, units, change, left, fix, end, read };
+  const around = { quantities: all.quantities, units, change, left, fix, end, read, stand };
   form = buildForm(question.fields, around, own().open, () => save(own()));
   show(entry);
   if (link && !history.state?.own) follow(question, link);
+  else comeBack(false);
+}
+
+/** Notes at which row of a table the person works. @param {string} field @param {number} row */
+function stand(field, row) {
+  const kept = own();
+  if (kept.place?.field === field && kept.place.row === row) return;
+  kept.place = { field, row };
+  save(kept);
+}
+
+/** Goes where the person stood, says how long ago that was, and after a long break asks what may have changed since.
+ * @param {boolean} here the page was only out of sight */
+function comeBack(here) {
+  const { place, when = Date.now() } = own();
+  const kind = question?.fields.find((field) => field.name === place?.field)?.kind;
+  const pause = kind?.type === "table" ? kind.booking?.pause : undefined;
+  const minutes = Math.floor((Date.now() - when) / 60_000);
+  if (!place || !pause || (here && minutes < 1)) return;
+  const long = minutes >= pause.after;
+  const [count, unit] = minutes < 100 ? [minutes, "minute"] : [Math.round(minutes / 60), "hour"];
+  const ago = minutes < 1 ? "" : `The last entry was ${count} ${unit}${count === 1 ? "" : "s"} ago.`;
+  const answers = question?.fields.find((field) => field.name === pause.field)?.label ?? "";
+  form?.boxes.get(place.field)?.cells?.stand(place.row, long ? `${ago} ${pause.text}` : ago, {
+    ...(long ? { [answers]: () => form?.focus(pause.field) } : {}),
+    "Go on": () => form?.focus(place.field, { row: place.row, column: 0 }),
+  });
 }
 
 /** Shows the entry that a link brings, beside the person's own. @param {Question} of @param {string} link */
@@ -293,7 +337,7 @@ function again() {
 }
 
 function showAsides() {
-  byId("aside").hidden = asides.length === 0;
+  byId("kept-aside").hidden = asides.length === 0;
   /** @type {HTMLTextAreaElement} */ (byId("aside-text")).value = asideText();
 }
 
@@ -301,8 +345,11 @@ function showAsides() {
 function connect() {
   /** @param {string} id @param {() => void} act */
   const on = (id, act) => byId(id).addEventListener("click", act);
-  on("undo", () => travel("undo", "redo"));
-  on("redo", () => travel("redo", "undo"));
+  byId("form").addEventListener("click", (event) => {
+    const way = event.target instanceof HTMLElement ? event.target.dataset.travel : "";
+    if (way === "undo") travel("undo", "redo");
+    else if (way === "redo") travel("redo", "undo");
+  });
   on("again", again);
   on("print", () => window.print());
   on("aside-save", () => download("farstaff-kept-aside.txt", asideText()));
@@ -313,6 +360,7 @@ function connect() {
     document.addEventListener(event, () => { pressing = event === "pointerdown"; }, true);
   }
   addEventListener("hashchange", route);
+  document.addEventListener("visibilitychange", () => { if (document.visibilityState === "visible") comeBack(true); });
   addEventListener("beforeprint", () => {
     showAll();
     if (question) showEntered(question, entry, answer);
@@ -333,10 +381,10 @@ function showHome() {
       if (event.ctrlKey || event.metaKey || event.shiftKey) return;
       event.preventDefault();
       history.pushState(null, "", link.href);
-      route();
       scrollTo(0, 0);
+      route();
       const first = question?.fields[0];
-      if (first) form?.focus(first.name);
+      if (first && !own().place) form?.focus(first.name);
     });
     return item;
   }));
@@ -373,6 +421,7 @@ function trouble(error) {
 }
 
 async function start() {
+  startRestart();
   startSettings();
   startHint();
   connect();

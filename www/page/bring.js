@@ -103,17 +103,17 @@ export function startBringing(into) {
       const known = new Set(around.read({}).notes.map((note) => note.text));
       const entry = new URLSearchParams(answer.entry);
       const units = columns.map((each) => entry.get(each.unitName) ?? each.unit);
-      const lines = text.trim() === "" ? [] : linesOf(entry.get(field.name) ?? "");
+      const echo = answer.read.find((each) => each.field === field.name)?.echo ?? "";
+      const lines = echo === "" ? [] : linesOf(entry.get(field.name) ?? ""); // nothing, or no table: it is not taken
       // Pasted at a later column, the rows that are there may hold what these lack.
-      const problems = answer.problems.filter((each) => each.field === field.name && lines.length > 0
+      const problems = answer.problems.filter((each) => each.field === field.name && text.trim() !== ""
         && (column === 0 || !each.cell || cellsOf(lines[each.cell.row] ?? "")[each.cell.column]));
       fill(dialog, "order", lines.length > 0 ? ""
         : `Columns in this order, unless headings name them: ${columns.map(heading).join("; ")}.`);
       within(dialog, "[data-x=notes]").replaceChildren(...answer.notes.filter((note) => !known.has(note.text))
         .map((note) => item(note.text)));
       within(dialog, "[data-x=problems]").replaceChildren(...problems.map((problem) => item(problem.message)));
-      within(dialog, ".preview").replaceChildren(...(lines.length > 0 ? [preview(lines, units, problems,
-        answer.read.find((each) => each.field === field.name)?.echo ?? "")] : []));
+      within(dialog, ".preview").replaceChildren(...(lines.length > 0 ? [preview(lines, units, problems, echo)] : []));
       within(dialog, ".ways").replaceChildren(...(lines.length > 0 ? ways(lines, units) : []));
     }
 
@@ -166,7 +166,7 @@ export function startBringing(into) {
       else give(await textOf(chosen), `From ${chosen.name}`);
     });
     within(dialog, "[data-do=leave]").addEventListener("click", () => dialog.close());
-    dialog.addEventListener("close", () => dialog.remove());
+    dialog.onclose = () => dialog.remove();
     document.body.append(dialog);
     dialog.showModal();
     give(pasted);

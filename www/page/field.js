@@ -17,6 +17,7 @@ import { copy, within } from "./dom.js";
  * @property {(fix: Fix) => void} fix
  * @property {() => void} end Enter in the last field
  * @property {(patch: Entry) => import("./core.js").Answer} read what the core makes of these texts alone
+ * @property {(field: string, row: number) => void} stand the person works at this row of a table
  */
 /**
  * One field on the page.
@@ -33,7 +34,10 @@ import { copy, within } from "./dom.js";
  * @property {(cell: Cell) => void} focus
  * @property {(cell: Cell, text: string) => void} put
  * @property {(cell: Cell) => boolean} ripe what is wrong there may be said now
- * @property {(problems: Problem[]) => void} tell shows what is wrong where
+ * @property {(problems: Problem[], read: import("./core.js").Read[]) => void} tell shows what is wrong where, and the columns asked
+ * @property {(rows: readonly import("./core.js").AtRow[]) => void} rows shows what is to be said at rows
+ * @property {(row: number, text: string, keys: Record<string, () => void>) => void} stand opens a row where someone comes
+ *   back to, and says something there
  */
 
 /** Name under which the unit picked beside a box, or over a column, travels. @param {string} name */
@@ -54,6 +58,10 @@ export const namesIn = (field) => [field.name, ...unitsOf(field).map(([name]) =>
 /** @param {readonly QuantityInfo[]} quantities @param {Field} field */
 export const infoOf = (quantities, { kind }) =>
   (kind.type === "number" ? quantities.find((each) => each.name === kind.quantity) : undefined);
+
+/** Whether it is asked: the choice it hangs on, if any, was read so. @param {Field} field @param {readonly import("./core.js").Read[]} read */
+export const isAsked = ({ when }, read) =>
+  !when || when.values.includes(read.find((each) => each.field === when.field)?.text ?? "");
 
 /** The unit a bare number has. @param {QuantityInfo} info @param {string} units */
 export const usualUnit = (info, units) => /** @type {any} */ (info)[units] ?? info.metric;

@@ -1,6 +1,6 @@
 // The fields of a question, made from the catalogue. A kind of field is one maker in `MAKERS`; none knows a name.
 import { byId, copy, fixKeys, within } from "./dom.js";
-import { dress, fillUnits, infoOf, startSign, unitName, usualUnit } from "./field.js";
+import { dress, fillUnits, infoOf, isAsked, startSign, unitName, usualUnit } from "./field.js";
 import { tableBox } from "./table.js";
 
 /** @typedef {import("./field.js").Field} Field */
@@ -169,7 +169,7 @@ export function buildForm(fields, around, open, onOpen) {
 
   /** Those that can be reached now, in the order in which they are entered. */
   const reachable = () => [...host.querySelectorAll("input, select.wide, .new")].filter(
-    (control) => !control.closest("details:not([open])"));
+    (control) => !control.closest("details:not([open]), [hidden]"));
 
   host.onkeydown = (event) => {
     const at = event.target;
@@ -202,11 +202,14 @@ export function buildForm(fields, around, open, onOpen) {
      * Shows how each field was read, and what is wrong with it where that may be said.
      * @param {Read[]} read @param {Problem[]} problems
      * @param {import("./core.js").Note[]} asks what is asked back
+     * @param {import("./core.js").Booked[]} booked what is to be said at rows
      */
-    tell(read, problems, asks) {
+    tell(read, problems, asks, booked) {
       for (const { field, root, target, cells } of boxes.values()) {
         const mine = problems.filter((each) => each.field === field.name);
-        cells?.tell(mine.filter((each) => each.cell));
+        root.hidden = !isAsked(field, read);
+        cells?.tell(mine.filter((each) => each.cell), read);
+        cells?.rows(booked.find((each) => each.field === field.name)?.rows ?? []);
         const problem = mine.find((each) => !each.cell);
         const error = within(root, ".error");
         error.hidden = !problem;

@@ -2,6 +2,7 @@
 import { byId, say } from "./dom.js";
 
 const HOURS_BETWEEN_CHECKS = 4;
+const ANSWER_MS = 30_000; // a worker that has lost its copy fetches it first
 
 /** @returns {ServiceWorkerContainer | undefined} */
 const workers = () => (location.protocol === "file:" ? undefined : navigator.serviceWorker);
@@ -11,7 +12,7 @@ function counted(worker) {
   return new Promise((done, failed) => {
     const { port1, port2 } = new MessageChannel();
     port1.onmessage = (event) => done(event.data);
-    setTimeout(() => failed(new Error("no answer")), 3000);
+    setTimeout(() => failed(new Error("no answer")), ANSWER_MS);
     worker.postMessage("ready?", [port2]);
   });
 }

@@ -7,8 +7,8 @@ import { infoOf, unitName, usualUnit } from "./field.js";
 /** @typedef {import("./field.js").Around} Around */
 /** @typedef {import("./core.js").QuantityInfo} QuantityInfo */
 /**
- * A column: its field, the name its unit travels under, and that unit.
- * @typedef {{ field: Field, unitName: string, info: QuantityInfo | undefined, unit: string }} Column
+ * A column: its field, the name its unit travels under, that unit, and whether it is in sight.
+ * @typedef {{ field: Field, unitName: string, info: QuantityInfo | undefined, unit: string, asked: boolean }} Column
  */
 
 const STRUCK = /^ *~/;
@@ -32,7 +32,7 @@ export const linesOf = (text) => (text === "" ? [] : text.split(/\r\n|\r|\n/).ma
 /** @param {Field} field @param {Around} around @returns {Column[]} */
 export const columnsOfTable = (field, around) => field.kind.type !== "table" ? [] : field.kind.columns.map((column) => {
   const info = infoOf(around.quantities, column);
-  return { field: column, unitName: unitName(`${field.name}.${column.name}`), info, unit: info ? usualUnit(info, around.units()) : "" };
+  return { field: column, unitName: unitName(`${field.name}.${column.name}`), info, unit: info ? usualUnit(info, around.units()) : "", asked: true };
 });
 
 /** The words on a column: its label, and the unit of the numbers in it. @param {Pick<Column, "field" | "unit">} column */

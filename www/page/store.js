@@ -4,6 +4,7 @@
 const NAME = "farstaff";
 const SCHEMA = 1;
 const FORM = 1; // of a record
+const LATE = "farstaff-late"; // what was not on disk yet when the page went out of sight
 
 /** @typedef {Record<string, string>} Entry */
 /**
@@ -15,6 +16,8 @@ const FORM = 1; // of a record
  * @property {Entry[]} undo
  * @property {Entry[]} redo
  * @property {Record<string, boolean>} open
+ * @property {number} [when] the entry was last written, milliseconds by this device's clock
+ * @property {{ field: string, row: number }} [place] the row of a table at which the person stood
  */
 /** @typedef {{ id: string, aside: true, why: string, text: string }} Aside */
 
@@ -28,6 +31,7 @@ export const asides = [];
 const unsaved = new Set();
 /** @type {Promise<void> | null} */
 let writing = null;
+let writes = ""; // id of the record that is being written
 /** @type {(trouble: unknown) => void} */
 let onTrouble = () => {};
 /** @type {BroadcastChannel | null} */
@@ -110,6 +114,9 @@ export async function openStore(tell) {
     tell.trouble(error);
     return;
   }
+  for (const [event, on] of /** @type {const} */ ([["pagehide", globalThis], ["visibilitychange", document]])) {
+    on.addEventListener(event, keepLate);
+  }
   for (const value of all) {
     if (value.aside === true && typeof value.text === "string") asides.push(value);
     else if (isKept(value)) records.set(value.id, value);
@@ -118,6 +125,7 @@ export async function openStore(tell) {
       tell.damaged();
     }
   }
+  takeLate();
   if (typeof BroadcastChannel === "function") {
     tabs = new BroadcastChannel(NAME);
     tabs.onmessage = async ({ data: id }) => {
@@ -126,6 +134,36 @@ export async function openStore(tell) {
       if (value && isKept(value)) Object.assign(record(id), value);
       if (value) tell.changed(id);
     };
+  }
+}
+
+/** A tab that closes ends a write that is under way, but not this one, which is over when it returns. */
+function keepLate() {
+  const late = [...new Set([...unsaved, writes])].filter(Boolean).map((id) => record(id));
+  try {
+    if (late.length > 0) localStorage.setItem(LATE, JSON.stringify(late));
+  } catch { /* no room, or no such store: then the write under way is all there is */ }
+}
+
+function forgetLate() {
+  try {
+    localStorage.removeItem(LATE);
+  } catch { /* no such store */ }
+}
+
+/** Brings back what [keepLate] kept, on top of what the disk had by then. */
+function takeLate() {
+  /** @type {unknown} */
+  let late;
+  try {
+    late = JSON.parse(localStorage.getItem(LATE) ?? "[]");
+  } catch { /* nothing that could be read */ }
+  if (!Array.isArray(late)) return;
+  for (const value of late.filter(isKept)) {
+    const rev = records.get(value.id)?.rev ?? 0;
+    if (rev > value.rev + 1) continue; // another tab has gone on since
+    records.set(value.id, { ...value, rev });
+    save(record(value.id));
   }
 }
 
@@ -155,6 +193,7 @@ async function write() {
   try {
     for (const id of unsaved) {
       unsaved.delete(id); // typing on while this is written puts it back
+      writes = id;
       try {
         await put(record(id));
       } catch (error) {
@@ -162,6 +201,8 @@ async function write() {
         throw error;
       }
     }
+    writes = "";
+    forgetLate();
   } catch (error) {
     onTrouble(error);
   }

@@ -30,15 +30,19 @@ async function takeOver() {
 async function serve(request) {
   const cache = await caches.open(NAME);
   const page = request.mode === "navigate";
-  // Parts never come from the network: that would mix versions.
-  return (await cache.match(page ? PAGE : request, { ignoreSearch: !page, ignoreVary: true }))
-    ?? (page ? fetch(request) : Response.error());
+  const kept = await cache.match(page ? PAGE : request, { ignoreSearch: !page, ignoreVary: true });
+  // With the page kept, a part from the network would mix versions. Some browsers drop a copy and leave its worker.
+  return kept ?? (page || !await cache.match(PAGE) ? fetch(request) : Response.error());
 }
 
-/** @param {MessagePort | undefined} port */
+async function complete() {
+  return (await (await caches.open(NAME)).keys()).length === FILES.length;
+}
+
+/** Says whether the copy is whole, and fills it again where it was dropped. @param {MessagePort | undefined} port */
 async function count(port) {
-  const kept = await (await caches.open(NAME)).keys();
-  port?.postMessage({ version: VERSION, complete: kept.length === FILES.length });
+  if (!await complete()) await fill().catch(() => {});
+  port?.postMessage({ version: VERSION, complete: await complete() });
 }
 
 sw.addEventListener("install", (event) => event.waitUntil(fill()));

@@ -1,9 +1,10 @@
 // A table field: one row is open and has boxes, the others are lines to read, so that thousands of them cost little. A
 // phone shows cards, a wide screen a grid. Every act makes a new text, and `write` puts only what differs on the page.
+import { startBooked } from "./booked.js";
 import { startBringing } from "./bring.js";
-import { closedPattern, makeCell, makeHead, SPARE } from "./cell.js";
-import { copy, download, fill, fixKeys, within } from "./dom.js";
-import { dress, helpOf, usualUnit } from "./field.js";
+import { closedPattern, makeCell, makeHead, showAsked, showWrong, SPARE } from "./cell.js";
+import { byId, copy, download, fill, within } from "./dom.js";
+import { dress, helpOf, isAsked, usualUnit } from "./field.js";
 import {
   cellsOf, changedBetween, columnsOfTable, heading, isBlank, isStruck, lineOf, linesOf, optionOf, separated, shown,
 } from "./rows.js";
@@ -52,11 +53,20 @@ export function tableBox(field, around) {
   let marked = new Map();
 
   dress(root, field, root);
-  const widths = columns.map(({ field: { kind } }) => (kind.type === "text" ? "minmax(0, 1.6fr)" : "minmax(0, 1fr)"));
-  root.style.setProperty("--grid", widths.join(" "));
   const heads = columns.map((column) => makeHead(column, (unit) => around.change({ [column.unitName]: unit }, "")));
   within(root, ".heads").append(...heads.map(({ root: made }) => made));
   const pattern = closedPattern(columns);
+  fit();
+
+  /** Shows the columns that are asked, and no others. */
+  function fit() {
+    showAsked(root, columns, [heads.map(({ root: head }) => head), pattern.querySelectorAll("[data-l]"), list.querySelectorAll("[data-l]")]);
+    if (!open) return;
+    const { at } = open;
+    close();
+    openRow(at);
+  }
+  const booked = field.kind.booking ? startBooked(name, columns, around) : undefined;
 
   /** @param {number} at */
   const item = (at) => /** @type {HTMLElement | undefined} */ (list.children[at]);
@@ -104,18 +114,25 @@ export function tableBox(field, around) {
     }
     const items = /** @type {HTMLElement[]} */ ([...list.children]); // asked for one by one, each would be counted anew
     const kept = Math.min(oldEnd, nowEnd);
-    if (open && open.at >= start && open.at < oldEnd && open.at >= nowEnd) close();
+    const gone = open && open.at >= start && open.at < oldEnd && open.at >= nowEnd ? open.at : -1;
+    const come = open && open.at === start && start === lines.length - grown && grown > 0 ? start : -1; // what was to come
+    const held = document.activeElement;
+    const way = held instanceof HTMLElement && open?.root.contains(held) ? held.dataset.travel : undefined;
+    if (gone >= 0) close();
     for (const li of items.splice(kept, oldEnd - kept)) li.remove();
     const made = fresh(kept, nowEnd);
     list.insertBefore(gathered(made), items[kept] ?? null);
     items.slice(start, kept).forEach((li, index) => draw(li, start + index));
     if (grown !== 0) {
       items.slice(kept).forEach((li, index) => number(li, nowEnd + index));
-      for (const li of list.querySelectorAll(".bad")) showWrong(/** @type {HTMLElement} */ (li), []);
+      for (const li of list.querySelectorAll(".bad")) showWrong(/** @type {HTMLElement} */ (li), [], around.fix);
       marked = new Map();
       if (open && open.at >= oldEnd) open.at += grown;
     }
     if (open) refill(open);
+    if (!booked || Math.max(gone, come) < 0) return;
+    openRow(Math.min(Math.max(gone, come), lines.length)); // someone books there
+    if (way) within(list, `[data-travel=${way}]`).focus();
   }
 
   /** Lines that are new on the page. @param {number} start @param {number} end */
@@ -174,6 +191,7 @@ export function tableBox(field, around) {
     const cells = cellsOf(line);
     while (cells.length <= column) cells.push("");
     cells[column] = value;
+    booked?.begun(lines, at, column, cells);
     lines = [...lines];
     lines[at] = lineOf(cells, isStruck(line));
     // The row to come is begun: the next one to come stands below it.
@@ -184,7 +202,9 @@ export function tableBox(field, around) {
     const li = item(at);
     if (li) draw(li, at);
     if (open) refill(open);
+    if (booked) around.stand(name, at);
     keep(`${name} ${at} ${column}`);
+    booked?.typed(lines[at] ?? "\t", column);
   }
 
   /** @param {Cell} cell @param {string} value */
@@ -211,7 +231,12 @@ export function tableBox(field, around) {
     within(editor, ".cells").append(...made.map(({ cell }) => cell));
     within(editor, ".no").id = `${name}-${at}`;
     help.id = `${name}-${at}-help`;
-    within(editor, ".keys").prepend(...groups.map((group) => groupKey(group)));
+    if (booked) within(editor, ".headline").append(booked.top);
+    for (const key of /** @type {NodeListOf<HTMLButtonElement>} */ (editor.querySelectorAll("[data-travel]"))) {
+      key.disabled = /** @type {HTMLButtonElement} */ (byId(key.dataset.travel ?? "")).disabled;
+    }
+    within(editor, ":scope > .keys").prepend(...groups
+      .filter((group) => columns.some(({ asked, field: of }) => asked && of.group === group)).map((group) => groupKey(group)));
     for (const key of /** @type {NodeListOf<HTMLElement>} */ (editor.querySelectorAll("[data-do]"))) {
       key.addEventListener("click", () => act(key.dataset.do ?? ""));
     }
@@ -293,7 +318,10 @@ export function tableBox(field, around) {
     if (!listed) listAll();
     const group = columns[column]?.field.group;
     if (group) unfold(group, true);
-    openRow(at, column)?.controls[column]?.focus();
+    const control = openRow(at, column)?.controls[column];
+    control?.focus();
+    control?.scrollIntoView({ block: "nearest" }); // the row above has closed meanwhile
+    if (booked) around.stand(name, at);
   }
 
   /** Lists the rows though there are many. */
@@ -302,27 +330,19 @@ export function tableBox(field, around) {
     show(lines);
   }
 
-  /** @param {HTMLElement} li @param {Problem[]} problems */
-  function showWrong(li, problems) {
-    li.classList.toggle("bad", problems.length > 0);
-    within(li, ".wrongs").replaceChildren(...problems.map((problem) => {
-      const wrong = copy("t-wrong");
-      within(wrong, "p").textContent = problem.message;
-      fixKeys(within(wrong, ".keys"), problem.fixes, around.fix);
-      return wrong;
-    }));
-    const columnsWrong = problems.map(({ cell }) => String(cell?.column));
-    li.dataset.wrong = columnsWrong.join(" ");
-    [...within(li, ".brief").children].forEach((span, index) => {
-      span.classList.toggle("off", index > 0 && columnsWrong.includes(String(index - 1)));
-    });
-  }
-
   /** @param {HTMLElement} li @param {number} at */
   function markCells(li, at) {
     if (open?.at !== at) return;
     const wrong = (li.dataset.wrong ?? "").split(" ");
     open.controls.forEach((control, index) => control.setAttribute("aria-invalid", String(wrong.includes(String(index)))));
+  }
+
+  /** What is wrong there may be said now. @param {Cell} cell */
+  function ripe({ row: at, column }) {
+    const control = open?.controls[column];
+    if (!open || at !== open.at || !open.root.contains(document.activeElement)) return true;
+    if (control?.getAttribute("aria-invalid") === "true") return true; // it was said before
+    return control !== document.activeElement && control?.value !== "";
   }
 
   list.addEventListener("click", (event) => {
@@ -336,6 +356,7 @@ export function tableBox(field, around) {
 
   list.addEventListener("focusout", (event) => {
     const to = event.relatedTarget;
+    booked?.speak();
     if (to instanceof Node && root.contains(to)) around.left(name);
   });
 
@@ -345,11 +366,12 @@ export function tableBox(field, around) {
     const { at, controls } = open;
     const typing = event.target instanceof HTMLInputElement;
     if (event.key === "Enter") {
-      const next = controls.slice(here + 1).find((control) => control.getClientRects().length > 0);
+      const next = controls.find((control, index) => index > here && control.getClientRects().length > 0
+        && !(booked && (control.closest(".folded") || booked.passed(here, index, controls)))); // seldom used: by tab or tap
       if (!next && at >= lines.length) return; // nothing in the row to come: on to the next field
       event.preventDefault();
       if (next) next.focus();
-      else focus({ row: at + 1, column: 0 });
+      else focus({ row: at + 1, column: at + 1 < lines.length ? 0 : booked?.begin(lines) ?? 0 });
     } else if (event.altKey && (event.key === "ArrowUp" || event.key === "ArrowDown")) {
       event.preventDefault();
       const what = event.key === "ArrowUp" ? "up" : "down";
@@ -435,13 +457,20 @@ export function tableBox(field, around) {
     cells: {
       focus,
       put,
-      ripe({ row: at, column }) {
-        const control = open?.controls[column];
-        if (!open || at !== open.at || !open.root.contains(document.activeElement)) return true;
-        if (control?.getAttribute("aria-invalid") === "true") return true; // it was said before
-        return control !== document.activeElement && control?.value !== "";
+      ripe,
+      stand(at, text, keys) {
+        if (!listed) listAll();
+        openRow(Math.min(at, lines.length));
+        booked?.ask(text, keys);
+        item(open?.at ?? at)?.scrollIntoView({ block: "center" });
       },
-      tell(problems) {
+      rows(rows) { booked?.tell(list, rows, ripe); },
+      tell(problems, read) {
+        const asked = columns.map((column) => isAsked(column.field, read));
+        if (columns.some((column, at) => column.asked !== asked[at])) {
+          columns.forEach((column, at) => { column.asked = asked[at] ?? true; });
+          fit();
+        }
         /** @type {Map<number, Problem[]>} */
         const wrong = new Map();
         for (const problem of problems) {
@@ -453,7 +482,7 @@ export function tableBox(field, around) {
           const mine = wrong.get(at) ?? [];
           const said = JSON.stringify(mine);
           if (!li || marked.get(at) === said) continue;
-          showWrong(li, mine);
+          showWrong(li, mine, around.fix);
           markCells(li, at);
           if (mine.length > 0) marked.set(at, said);
           else marked.delete(at);
