@@ -334,6 +334,8 @@ fn killed(stage: &Stage) -> Result<()> {
         browser.keys(&shots[at].reading[on_disk..=on_disk])?;
         browser.kill();
         browser = start()?;
+        // Right after a crash a store may open late: the page says so, and brings the entry when it is there.
+        browser.wait("(await import('./store.js')).record('question-book').entry.book")?;
         let found = rows(&browser)?;
         let with = |characters: usize| {
             let mut all = whole(&shots[..at]);

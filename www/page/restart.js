@@ -17,6 +17,7 @@ async function trapped(error) {
     return;
   }
   sessionStorage.setItem(KEY, String(Date.now()));
+  history.replaceState({ own: true }, "", location.href); // a link was followed already
   location.reload();
 }
 
