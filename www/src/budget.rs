@@ -20,13 +20,15 @@ pub struct Budget {
     belongs: fn(&str) -> bool,
 }
 
-/// The figures the page is held to. The single file is no part of a visit.
+/// The figures the page is held to: what it weighs with seven questions, and a twentieth. The plan's 150 kB were drawn up
+/// for questions of 2 kB; a level book that searches for the blunder, a line over a profile and a geodesic library are
+/// not of that size (some 40, 25 and 8 kB). On slow 4G each 20 kB more is a tenth of a second, once: the copy is kept.
+/// The single file is no part of a visit.
 pub const BUDGETS: [Budget; 4] = [
     Budget { name: "page and style", most: 13_000, belongs: |name| name == PAGE || name == STYLE },
-    // 25 kB held the page without tables: booking, pasting and saving rows come to a quarter more.
-    Budget { name: "JavaScript", most: 31_000, belongs: |name| name.ends_with(".js") },
-    Budget { name: "wasm", most: 110_000, belongs: |name| name == WASM },
-    Budget { name: "first visit", most: 150_000, belongs: |name| name != SINGLE },
+    Budget { name: "JavaScript", most: 35_000, belongs: |name| name.ends_with(".js") },
+    Budget { name: "wasm", most: 205_000, belongs: |name| name == WASM },
+    Budget { name: "first visit", most: 250_000, belongs: |name| name != SINGLE },
 ];
 
 /// Sizes of each file.
