@@ -52,7 +52,8 @@ export function showAll() {
 /** What the decision rests on.
  * @param {Answer} answer @param {{ fix: (fix: Fix) => void, take: (offer: Offer) => void }} act */
 function showRest(answer, { fix, take }) {
-  showList("results", "dl", answer.results.map(result));
+  showList("results", "dl", answer.results.filter((each) => !each.idle).map(result));
+  showList("idle", "dl", answer.results.filter((each) => each.idle).map(result));
   showList("offers", "ul", answer.offers.map((offer) => {
     const item = copy("t-note");
     within(item, "p").textContent = offer.text;

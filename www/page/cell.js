@@ -88,7 +88,7 @@ export function showAsked(root, columns, parts) {
   const seen = columns.filter(({ asked }) => asked);
   const many = seen.length > MANY;
   const widths = seen.map(({ field: { kind, group } }) =>
-    `minmax(0, ${(kind.type === "text" ? 1.6 : 1) * (many && group ? 0.7 : 1)}fr)`);
+    `minmax(0, ${(kind.type === "text" ? 1.25 : 1) * (many && group ? 0.7 : 1)}fr)`);
   root.style.setProperty("--grid", widths.join(" "));
   root.classList.toggle("many", many);
   for (const part of parts) {

@@ -142,6 +142,8 @@ pub struct Outcome {
     pub doubt: Option<Doubt>,
     /// What the number does, in words, with its sign.
     pub meaning: String,
+    /// It does not arise with this entry.
+    pub idle: bool,
 }
 
 /// Doubt of a result: a 95 % half-width.
@@ -298,7 +300,15 @@ impl Answer {
         meaning: String,
     ) {
         let Promised { name, label, .. } = *promise;
-        self.results.push(Outcome { name, label, value, text: shown.text, unit: shown.unit, doubt, meaning });
+        let Shown { text, unit } = shown;
+        self.results.push(Outcome { name, label, value, text, unit, doubt, meaning, idle: false });
+    }
+    /// A result that does not arise with this entry, and why: the page puts it behind the others.
+    pub fn idle(&mut self, promise: &Promised, why: impl Into<String>) {
+        self.result(promise, None, Shown { text: "none".to_owned(), unit: "" }, None, why.into());
+        if let Some(last) = self.results.last_mut() {
+            last.idle = true;
+        }
     }
     /// Decides nothing, and says why.
     pub fn not_known(&mut self, why: String) {

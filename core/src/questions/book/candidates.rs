@@ -5,7 +5,6 @@ use super::columns::LONGEST;
 use super::fields::STADIA;
 use super::levels::NONE;
 use super::rows::Spot;
-use super::sheet::words;
 use crate::doubt::Estimate;
 use crate::levelling::blunder::{Candidate, End, Known, Place, Side, Slip, candidates};
 use crate::quantity::show::{Show, significant};
@@ -27,15 +26,16 @@ pub fn fill(asked: &Asked, case: &Case, answer: &mut Answer) {
     let beyond = case.judged().zip(case.allowed).filter(|(off, allowed)| off.abs() > *allowed);
     let Some((off, allowed)) = beyond else {
         let why = "the run closes within its limit, or has not closed yet".to_owned();
-        return answer.result(&LEAVES, None, words("none"), None, why);
+        return answer.idle(&LEAVES, why);
     };
     let found = search(asked, case, off, allowed);
     let show = asked.show();
     let Some(first) = found.first() else {
         let why = "no single slip of the usual kinds explains the misclosure: two of them, or a mark that moved";
-        return answer.result(&LEAVES, None, words("none"), None, why.to_owned());
+        return answer.idle(&LEAVES, why);
     };
     let [what, at, ..] = told(case, show, &first.slip);
+    answer.verdict.sentence.push_str(&format!(" First candidate: {what}, {at}."));
     let meaning = format!("{what}, {at}: a candidate, not a proof. Re-read it first");
     answer.result(&LEAVES, Some(first.left), show.small(first.left, 0.001), None, meaning);
     table(case, show, &found, answer);

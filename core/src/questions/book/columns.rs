@@ -20,7 +20,7 @@ pub const POINT: Field = Field::text("point", "Point", 24, "it must fit beside i
     .aid(Aid::Numbered)
     .help("Its name. Rows of one point that follow each other are one point.");
 pub const BACK: Field = staff("back", "Back sight", "1.234").help("To the point of known level: it begins a setup.");
-pub const INTER: Field = staff("inter", "Intermediate", "0.985").help("To a point that carries nothing on.");
+pub const INTER: Field = staff("inter", "Inter sight", "0.985").help("To a point that carries nothing on.");
 pub const FORE: Field = staff("fore", "Fore sight", "2.310")
     .help("To the point that carries the level on: it ends the setup. The next back sight may stand in the same row.");
 pub const DISTANCE: Field = Field::number("distance", "Distance", Quantity::Distance, "35 m")

@@ -86,7 +86,7 @@ pub fn results(case: &Case, inters: &[Inter], show: Show, answer: &mut Answer) {
             );
             answer.result(&BEST_BACK, Some(d), shown, None, text);
         }
-        None => answer.result(&BEST_BACK, None, words("none"), None, "no point is outside its tolerance".to_owned()),
+        None => answer.idle(&BEST_BACK, "no point is outside its tolerance"),
     }
 }
 

@@ -25,13 +25,13 @@ pub fn words(text: &str) -> Shown {
 }
 
 /// Where nothing is known of the balance.
-const NO_DISTANCES: (&str, &str) = ("not known", "no setup has both its distances");
+const NO_DISTANCES: &str = "no setup has both its distances";
 
 /// A result, or words where there is none.
-fn maybe(answer: &mut Answer, promise: &Promised, found: Option<(f64, Shown)>, none: (&str, &str)) {
+fn maybe(answer: &mut Answer, promise: &Promised, found: Option<(f64, Shown)>, none: &str) {
     match found {
         Some((value, shown)) => answer.result(promise, Some(value), shown, None, promise.meaning.to_owned()),
-        None => answer.result(promise, None, words(none.0), None, none.1.to_owned()),
+        None => answer.idle(promise, none),
     }
 }
 
@@ -58,14 +58,14 @@ fn levels(case: &Case, show: Show, answer: &mut Answer) {
         }
     }
     let allowed = case.allowed.map(|a| (a, show.entered(a)));
-    maybe(answer, &ALLOWED, allowed, ("not known", "it needs the limit, and what that goes by"));
+    maybe(answer, &ALLOWED, allowed, "it needs the limit, and what that goes by");
 }
 
 fn sums(case: &Case, show: Show, answer: &mut Answer) {
     let count = case.book.done();
     answer.result(&SETUPS, Some(count as f64), words(&count.to_string()), None, SETUPS.meaning.to_owned());
     let length = case.length.map(|l| (l, show.distance(l, Round::Near)));
-    maybe(answer, &RUN_LENGTH, length, ("not known", "distances are missing"));
+    maybe(answer, &RUN_LENGTH, length, "distances are missing");
     let sums = case.reduced.sums;
     for (promise, sum) in [(&SUM_BACK, sums.back), (&SUM_FORE, sums.fore)] {
         answer.result(promise, Some(sum), case.digits.shown(sum), None, promise.meaning.to_owned());
@@ -99,20 +99,20 @@ fn balance(case: &Case, show: Show, answer: &mut Answer) {
         answer.result(promise, Some(part.bias), shown, Some(doubt), promise.meaning.to_owned());
     }
     let fore = next_fore(case).map(|(fore, _)| (fore, show.distance(fore, Round::Near)));
-    maybe(answer, &NEXT_FORE, fore, ("none", "no setup stands whose back sight has a distance"));
+    maybe(answer, &NEXT_FORE, fore, "no setup stands whose back sight has a distance");
 }
 
 fn wires(case: &Case, show: Show, answer: &mut Answer) {
     let unequal = case.book.sights().filter_map(|s| s.1.wires).map(|w| w.unequal());
     // Readings are whole nanometres.
     let most = unequal.reduce(f64::max).map(exact);
-    maybe(answer, &HALVES, most.map(|m| (m, show.entered(m))), ("none", "no sight has three wires"));
+    maybe(answer, &HALVES, most.map(|m| (m, show.entered(m))), "no sight has three wires");
 }
 
 /// Whether the level has moved, by its back sight read again.
 fn reread(asked: &Asked, case: &Case, show: Show, answer: &mut Answer) {
     let Some((again, setup)) = asked.number(&REREAD).zip(case.book.run.setups.last()) else {
-        return answer.result(&SHIFT, None, words("none"), None, "the back sight was not read again".to_owned());
+        return answer.idle(&SHIFT, "the back sight was not read again");
     };
     let first = setup.back.reading;
     let again = if first < 0.0 { -again } else { again };
@@ -137,7 +137,7 @@ fn reread(asked: &Asked, case: &Case, show: Show, answer: &mut Answer) {
 fn slope(case: &Case, show: Show, answer: &mut Answer) {
     let ends = case.limits.slope.map(|s| s.0);
     let of = |end: Option<f64>| end.filter(|d| d.is_finite()).map(|d| (d, show.distance(d, Round::Down)));
-    let none = ("no limit", "enter the slope of the ground, and the length of the staff for downhill");
+    let none = "enter the slope of the ground, and the length of the staff for downhill";
     maybe(answer, &UPHILL, of(ends.map(|e| e[0])), none);
     maybe(answer, &DOWNHILL, of(ends.map(|e| e[1])), none);
 }

@@ -1,6 +1,5 @@
 //! The marks of an overnight stop.
 
-use super::sheet::words;
 use crate::levelling::stop::{Check, Found, LEAST, Readings, check};
 use crate::quantity::show::Show;
 use crate::quantity::unit::Quantity;
@@ -39,7 +38,7 @@ pub fn fill(asked: &Asked, budget: &Budget, answer: &mut Answer) {
     let both = readings(&LEFT_A, &LEFT_B, &LEFT_C).zip(readings(&FOUND_A, &FOUND_B, &FOUND_C));
     let Some((leaving, returning)) = both else {
         let why = "no marks were read on leaving and again on return".to_owned();
-        return answer.result(&CHANGE, None, words("none"), None, why);
+        return answer.idle(&CHANGE, why);
     };
     // Four readings, each with its doubt.
     let expected = 2.0 * budget.reading.0;

@@ -5,7 +5,6 @@ use super::columns::{self, POINT};
 use super::fields::STADIA;
 use super::levels::NONE;
 use super::rows::{Book, Spot};
-use super::sheet::words;
 use crate::levelling::closure::allowed;
 use crate::levelling::reduce::reduce;
 use crate::levelling::twice::{Leg, Point, adjusted, legs, parting, per_km};
@@ -61,7 +60,7 @@ pub fn fill(asked: &Asked, case: &Case, answer: &mut Answer) {
 /// What the differences say of the levelling; `none`: why they do not.
 fn deviation(legs: &[Leg], none: &str, show: Show, answer: &mut Answer) {
     let Some(s) = per_km(legs) else {
-        return answer.result(&PER_KM, None, words("none"), None, none.to_owned());
+        return answer.idle(&PER_KM, none);
     };
     let text = format!("from {} to {}", show.own(s.bias - s.below), show.own(s.bias + s.above));
     let few = if legs.len() < 10 { "; few legs: it is hardly known" } else { "" };
@@ -72,7 +71,7 @@ fn deviation(legs: &[Leg], none: &str, show: Show, answer: &mut Answer) {
 /// The leg in which they part; `none`: why there is none.
 fn apart(first: &[Point], leg: Option<&Leg>, none: &str, show: Show, answer: &mut Answer) {
     let Some(leg) = leg else {
-        return answer.result(&APART, None, words("none"), None, none.to_owned());
+        return answer.idle(&APART, none);
     };
     let off = fine(leg.difference());
     let between = format!("between {} and {}", name(first, leg.from), name(first, leg.to));
