@@ -22,7 +22,7 @@ pub const SURVEY_FOOT_M: (f64, f64) = (1200.0, 3937.0);
 /// Walking speed used to say a distance in everyday words, metres a minute (common practice, no source).
 pub const WALK_M_PER_MIN: f64 = 75.0;
 
-/// Length of a pace used to say a distance in everyday words, metres (common practice, no source).
+/// Length of a pace, metres (common practice, no source).
 pub const PACE_M: f64 = 0.75;
 
 /// 95 % half-width of a normal distribution in standard deviations, rounded to 2 as JCGM 100 (GUM) 6.3.3 allows.

@@ -1,6 +1,6 @@
 //! Every unit once, with its exact ratio.
 
-use crate::constants::{FOOT_M, SURVEY_FOOT_M};
+use crate::constants::{FOOT_M, PACE_M, SURVEY_FOOT_M};
 use serde::Serialize;
 use std::f64::consts::PI;
 
@@ -123,6 +123,7 @@ const MI: Unit = unit("mi", &["mile", "miles"], 5280.0 * FOOT_M, 1.0);
 pub const NAUTICAL_MILE: Unit = unit("NM", &["nmi", "nautical mile", "nautical miles", "sea miles"], 1852.0, 1.0);
 /// Minute of arc, of an angle in radians: what a dip is shown in.
 pub const ARC_MINUTE: Unit = unit("′", &[], PI, 10_800.0);
+const PACES: Unit = unit("paces", &["pace"], PACE_M, 1.0);
 const MM_PER_M: Unit = unit("mm/m", &["‰"], 1.0, 1000.0);
 const PERCENT: Unit = unit("%", &["percent"], 1.0, 100.0);
 const PER_ONE: Unit = unit("of 1", &[], 1.0, 1.0);
@@ -167,7 +168,7 @@ const fn lengths(name: Quantity, units: &'static [UnitInfo], metric: &'static st
 
 /// Every quantity.
 pub const QUANTITIES: &[QuantityInfo] = &[
-    lengths(Quantity::Distance, &[METRE, KILOMETRE, FOOT, SURVEY_FOOT, MILE, SEA_MILE], "m"),
+    lengths(Quantity::Distance, &[METRE, KILOMETRE, FOOT, SURVEY_FOOT, MILE, SEA_MILE, info(PACES, "pace")], "m"),
     lengths(Quantity::Height, &[METRE, MILLIMETRE, FOOT, SURVEY_FOOT], "m"),
     lengths(Quantity::SmallLength, &[MILLIMETRE, info(CM, "centimetre"), METRE, FOOT, SURVEY_FOOT], "mm"),
     same(Quantity::Radius, &[KILOMETRE, METRE, MILE, FOOT, SURVEY_FOOT], "km"),
@@ -218,6 +219,7 @@ const ALL: &[Unit] = &[
     FT_US,
     MI,
     NAUTICAL_MILE,
+    PACES,
     MM_PER_M,
     ARC_SECOND,
     MILLIGON,

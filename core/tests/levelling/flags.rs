@@ -59,6 +59,7 @@ fn distances() {
 
 #[test]
 fn wires() {
+    only("A\t1.200\t\t\t40\t\t1.300\t1.100", &[], (0, 4), "By the wires it is 20 m");
     only("A\t1.200\t\t\t\t\t1.300\t1.104", &[], (0, 6), "The half intervals differ by 4 mm");
     assert_eq!(said("A\t1.200\t\t\t\t\t1.300\t1.103", &[]), vec![]);
     only("A\t1.200\t\t\t\t\t1.300\t1.250", &[], (0, 6), "The middle wire does not lie between");

@@ -66,6 +66,7 @@ pub struct Limits {
     pub sight: f64,
     pub imbalance: f64,
     pub wires: f64,
+    pub stadia: f64,
     /// Longest sights uphill and downhill of where the level stands, and + where it is uphill ahead.
     pub slope: Option<([f64; 2], f64)>,
 }
@@ -83,6 +84,7 @@ impl Limits {
             sight: asked.must(&SIGHT_LIMIT),
             imbalance: asked.must(&IMBALANCE),
             wires: asked.must(&WIRES),
+            stadia: asked.must(&STADIA),
             slope,
         }
     }

@@ -16,6 +16,9 @@ use crate::question::{Asked, names};
 pub const PAUSE: u32 = 10;
 const DAY: i64 = 24 * 60;
 
+/// How far a paced distance and that of the wires may lie apart: metres, and a share (our rule, no source).
+const PACED: (f64, f64) = (2.0, 0.1);
+
 /// What is to be said at a row: at a column, or over it as the heading of a setup.
 struct Said {
     row: usize,
@@ -98,7 +101,7 @@ impl Flags<'_> {
                 self.against(last, sight.reading, spot, column);
             }
             before = Some(sight.reading);
-            self.wires(spot);
+            self.wires(sight, spot, column);
             self.distance(sight, spot, column);
         }
     }
@@ -128,7 +131,7 @@ impl Flags<'_> {
             self.say(spot, column, "Like the reading before with two digits swapped: read it again.".to_owned());
         }
     }
-    fn wires(&mut self, spot: Spot) {
+    fn wires(&mut self, sight: Sight, spot: Spot, column: &Field) {
         let Some(wires) = spot.wires else { return };
         let unequal = wires.unequal();
         if !wires.in_order() {
@@ -136,16 +139,25 @@ impl Flags<'_> {
         } else if exact(unequal - self.limits.wires) > 0.0 {
             let by = self.show.entered(unequal);
             self.say(spot, &UPPER, format!("The half intervals differ by {by}: read the wires again."));
+        } else {
+            let by_wires = wires.distance(self.limits.stadia);
+            if sight.distance.is_some_and(|d| (d - by_wires).abs() > PACED.0 + PACED.1 * by_wires) {
+                let by = self.show.distance(by_wires, Round::Near);
+                self.say(spot, self.distance_column(spot, column), format!("By the wires it is {by}: pace it again."));
+            }
         }
     }
     fn distance(&mut self, sight: Sight, spot: Spot, column: &Field) {
         if sight.distance.is_some_and(|d| d > self.limits.sight) {
             let most = self.show.distance(self.limits.sight, Round::Near);
-            let row = self.book.rows.get(spot.row);
-            let both = row.is_some_and(|r| r.number(&BACK).is_some() && r.number(&FORE).is_some());
-            let column = if both && column.name == BACK.name { &BACK_DISTANCE } else { &DISTANCE };
-            self.say(spot, column, format!("Longer than {most}."));
+            self.say(spot, self.distance_column(spot, column), format!("Longer than {most}."));
         }
+    }
+    /// Where the distance of that reading stands.
+    fn distance_column(&self, spot: Spot, column: &Field) -> &'static Field {
+        let row = self.book.rows.get(spot.row);
+        let both = row.is_some_and(|r| r.number(&BACK).is_some() && r.number(&FORE).is_some());
+        if both && column.name == BACK.name { &BACK_DISTANCE } else { &DISTANCE }
     }
     /// The two sights of a setup, and how long it stood.
     fn setup(&mut self, setup: &Setup, places: &Places) {
