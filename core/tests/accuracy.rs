@@ -87,7 +87,7 @@ fn guide(sky: &str, height: f64) -> KRange {
 fn find(texts: &[&str]) -> Unit {
     let all = farstaff::quantity::unit::QUANTITIES.iter().map(|q| q.name);
     let quantity: Quantity = all.into_iter().find(|q| format!("{q:?}") == texts[0]).unwrap();
-    quantity.unit(texts[1]).unwrap()
+    *quantity.unit(texts[1]).unwrap()
 }
 
 /// The error of a row in ulps of the reference over its conditioning; infinite where one has a value and the other none.

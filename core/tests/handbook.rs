@@ -162,7 +162,7 @@ fn figures_of_others() {
             panic!("{line}")
         };
         assert!(!source.is_empty(), "{line}");
-        let output = if unit == "′" { ARC_MINUTE } else { quantity(what, unit).unit(unit).unwrap() };
+        let output = if unit == "′" { ARC_MINUTE } else { *quantity(what, unit).unit(unit).unwrap() };
         let expected: f64 = printed.parse().unwrap();
         let got = compute(what, &Inputs(inputs), output.to_si(expected).unwrap());
         let got = output.from_si(got).unwrap();

@@ -10,7 +10,7 @@ const MEGABYTE: usize = 1_000_000;
 /// (three letters for one), and those handed out.
 const COPIES: usize = 20;
 /// What a row holds as it was read, and what is said of it; there are a million rows at most.
-const ROW: usize = 2000;
+const ROW: usize = 700;
 /// A debug build on a slow machine, per megabyte.
 const SECONDS: f64 = 5.0;
 

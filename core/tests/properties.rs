@@ -274,7 +274,7 @@ fn the_guide_is_ordered_and_without_a_jump() {
 /// Every way a unit is written.
 fn each_unit(mut check: impl FnMut(Quantity, farstaff::quantity::unit::Unit)) {
     for q in QUANTITIES {
-        q.units.iter().for_each(|info| check(q.name, q.name.unit(info.symbol).unwrap()));
+        q.units.iter().for_each(|info| check(q.name, *q.name.unit(info.symbol).unwrap()));
     }
 }
 
@@ -304,10 +304,10 @@ fn units_go_there_and_back() {
 fn every_spelling_of_a_unit_is_that_unit() {
     each_unit(|quantity, unit| {
         for spelling in unit.also.iter().copied().chain([unit.symbol]) {
-            assert_eq!(quantity.unit(spelling), Some(unit), "{quantity:?} {spelling}");
+            assert_eq!(quantity.unit(spelling), Some(&unit), "{quantity:?} {spelling}");
             assert_eq!(
                 quantity.unit(&format!(" ({}) ", spelling.to_uppercase())),
-                Some(unit),
+                Some(&unit),
                 "{quantity:?} {spelling}"
             );
         }

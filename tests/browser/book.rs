@@ -241,9 +241,8 @@ fn pause(stage: &Stage) -> Result<()> {
         browser.wait("document.querySelector('.open .no i').textContent === '32'")?;
         let text = browser.text(".open .ask p")?;
         check(text.contains(&format!("{minutes} minutes")), || text.clone())?;
-        let view = "const box = document.querySelector('.open .ask').getBoundingClientRect();
-            return box.top > 0 && box.bottom < innerHeight";
-        same(browser.js(view)?, json!(true))?;
+        let box_of_it = "document.querySelector('.open .ask').getBoundingClientRect()";
+        browser.wait(&format!("{box_of_it}.top > 0 && {box_of_it}.bottom < innerHeight"))?;
         same(browser.js("return document.querySelectorAll('.open .ask button').length > 1")?, json!(asks))?;
     }
     browser.tap(".open .ask button")?;
@@ -259,6 +258,8 @@ fn told(stage: &Stage) -> Result<()> {
     // Too near the foot of the staff: said at its row once it has been typed, and below it.
     let top = format!("return document.querySelector({}).getBoundingClientRect().top", json!(cell(3, FORE)));
     browser.keys("0")?;
+    // The page has come to rest where the row opened.
+    std::thread::sleep(std::time::Duration::from_millis(300));
     let before = browser.js(&top)?;
     browser.keys("123")?;
     std::thread::sleep(std::time::Duration::from_millis(300));

@@ -169,15 +169,15 @@ impl Browser {
     /// Taps the middle of an element, as a finger does where the engine's driver has fingers. Like a finger it first
     /// moves the page until the element lies free: a driver alone leaves it under the bar at the top.
     pub fn tap(&self, css: &str) -> Result<()> {
-        let ready = format!(
-            "document.querySelector({})?.scrollIntoView({{ block: 'center' }});
-            globalThis.tapped = false;
-            addEventListener('click', () => {{ globalThis.tapped = true; }}, {{ capture: true, once: true }}); return 0;",
-            json!(css)
-        );
-        self.js(&ready)?;
+        let scroll =
+            format!("document.querySelector({})?.scrollIntoView({{ block: 'center' }}); return 0;", json!(css));
+        self.js(&scroll)?;
         // Two quick taps on the same place of the screen would be a double tap.
         std::thread::sleep(BETWEEN_TAPS);
+        // What came into view has taken its own height, and may have moved the element away again.
+        self.js(&scroll)?;
+        self.js("globalThis.tapped = false;
+            addEventListener('click', () => { globalThis.tapped = true; }, { capture: true, once: true }); return 0;")?;
         let touch = |origin: Value| {
             let moves = json!([
                 { "type": "pointerMove", "x": 0, "y": 0, "origin": origin },

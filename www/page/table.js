@@ -462,7 +462,10 @@ export function tableBox(field, around) {
         if (!listed) listAll();
         openRow(Math.min(at, lines.length));
         booked?.ask(text, keys);
-        item(open?.at ?? at)?.scrollIntoView({ block: "center" });
+        const row = item(open?.at ?? at);
+        const show = () => (row?.querySelector(".ask:not([hidden])") ?? row)?.scrollIntoView({ block: "center" });
+        show();
+        requestAnimationFrame(show); // rows that come into view take their own height
       },
       rows(rows) { booked?.tell(list, rows, ripe); },
       tell(problems, read) {

@@ -72,13 +72,13 @@ pub struct Show(pub System);
 
 impl Show {
     /// The unit errors and corrections are shown in: mm, or feet; metres from ten metres up.
-    pub fn small_unit(self, si: f64) -> Unit {
+    pub fn small_unit(self, si: f64) -> &'static Unit {
         let quantity = if si.abs() >= 10.0 { Quantity::Height } else { Quantity::SmallLength };
         quantity.usual(self.0)
     }
     /// A small length to two significant digits of `grain` (its doubt, or itself).
     pub fn small(self, si: f64, grain: f64) -> Shown {
-        self.small_in(&self.small_unit(si.abs().max(grain.abs())), si, grain)
+        self.small_in(self.small_unit(si.abs().max(grain.abs())), si, grain)
     }
     /// The same in a given unit; to one digit of its own where those of `grain` would make it look like nothing.
     pub fn small_in(self, unit: &Unit, si: f64, grain: f64) -> Shown {
@@ -90,39 +90,39 @@ impl Show {
     /// A small length to two significant digits of its own, on both sides of the point.
     pub fn own(self, si: f64) -> Shown {
         let unit = self.small_unit(si);
-        let value = in_unit(si, &unit);
+        let value = in_unit(si, unit);
         if magnitude(value) >= 2 {
             return Shown { text: significant(value, 2), unit: unit.symbol };
         }
-        self.small_in(&unit, si, si)
+        self.small_in(unit, si, si)
     }
     /// A small length that was entered, or follows from what was: four significant digits, no zeros after them.
     pub fn entered(self, si: f64) -> Shown {
         let unit = self.small_unit(si);
-        Shown { text: significant(in_unit(si, &unit), 4), unit: unit.symbol }
+        Shown { text: significant(in_unit(si, unit), 4), unit: unit.symbol }
     }
     /// A height, to a tenth of a millimetre or a thousandth of a foot.
     pub fn height(self, si: f64) -> Shown {
         let unit = Quantity::Height.usual(self.0);
-        Shown { text: places(in_unit(si, &unit), if unit.symbol == "m" { 4 } else { 3 }), unit: unit.symbol }
+        Shown { text: places(in_unit(si, unit), if unit.symbol == "m" { 4 } else { 3 }), unit: unit.symbol }
     }
     /// A length in metres or feet to two significant digits of `grain`.
     pub fn metres(self, si: f64, grain: f64) -> Shown {
         let grain = if si == 0.0 { 1.0 } else { grain.abs().max(0.001) };
-        self.small_in(&Quantity::Height.usual(self.0), si, grain)
+        self.small_in(Quantity::Height.usual(self.0), si, grain)
     }
     /// A height in words: as many digits as it has, up to the centimetre or the hundredth of a foot.
     pub fn height_words(self, si: f64) -> Shown {
         let unit = Quantity::Height.usual(self.0);
-        let text = places(in_unit(si, &unit), 2);
+        let text = places(in_unit(si, unit), 2);
         Shown { text: text.trim_end_matches('0').trim_end_matches('.').to_owned(), unit: unit.symbol }
     }
     /// A distance along the ground: three significant digits, never finer than 0.1; kilometres or miles from ten up.
     pub fn distance(self, si: f64, round: Round) -> Shown {
         let usual = Quantity::Distance.usual(self.0);
         let long = Quantity::Distance.unit(if usual.symbol == "m" { "km" } else { "mi" }).unwrap_or(usual);
-        let unit = if in_unit(si, &long).abs() >= 10.0 { long } else { usual };
-        let value = in_unit(si, &unit);
+        let unit = if in_unit(si, long).abs() >= 10.0 { long } else { usual };
+        let value = in_unit(si, unit);
         let places_left = (2 - magnitude(value)).min(1);
         let step = libm::pow(10.0, -f64::from(places_left));
         let steps = value / step;
@@ -143,7 +143,7 @@ impl Show {
     pub fn range(self, from: f64, to: f64) -> (Shown, Shown) {
         let (fine_from, fine_to) = (self.distance(from, Round::Up), self.distance(to, Round::Down));
         let unit = Quantity::Distance.usual(self.0);
-        let (low, high) = (libm::ceil(in_unit(from, &unit)), libm::floor(in_unit(to, &unit)));
+        let (low, high) = (libm::ceil(in_unit(from, unit)), libm::floor(in_unit(to, unit)));
         let coarse = fine_from.unit == unit.symbol && fine_to.unit == unit.symbol && high < 1000.0 && high - low >= 4.0;
         if coarse {
             let whole = |value: f64| Shown { text: places(value, 0), unit: unit.symbol };

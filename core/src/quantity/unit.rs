@@ -261,17 +261,17 @@ impl Quantity {
         matches!(self, Quantity::Latitude | Quantity::Longitude)
     }
     /// The unit a bare number has.
-    pub fn usual(self, system: System) -> Unit {
+    pub fn usual(self, system: System) -> &'static Unit {
         let info = self.info();
         let symbol = match system {
             System::Metric => info.metric,
             System::Foot => info.foot,
             System::SurveyFoot => info.survey_foot,
         };
-        self.unit(symbol).unwrap_or(PER_ONE)
+        self.unit(symbol).unwrap_or(&PER_ONE)
     }
     /// The unit of this quantity that is written so, in any usual spelling. `m` is metre, or half of k, by the quantity.
-    pub fn unit(self, text: &str) -> Option<Unit> {
+    pub fn unit(self, text: &str) -> Option<&'static Unit> {
         let text = text.trim().trim_end_matches('.');
         let lower = text.to_ascii_lowercase();
         let lower = lower.strip_suffix(')').and_then(|t| t.strip_prefix('(')).unwrap_or(&lower);
@@ -283,6 +283,5 @@ impl Quantity {
         all()
             .find(|u| u.symbol == text)
             .or_else(|| all().find(|u| u.symbol.eq_ignore_ascii_case(lower) || u.also.contains(&lower)))
-            .copied()
     }
 }

@@ -208,7 +208,7 @@ impl Asked {
         self.number(field).unwrap_or(0.0)
     }
     /// The unit a number was read in.
-    pub fn unit(&self, field: &Field) -> Option<Unit> {
+    pub fn unit(&self, field: &Field) -> Option<&'static Unit> {
         match self.value(field)?.what {
             What::Number(_, unit) => Some(unit),
             _ => None,

@@ -229,14 +229,14 @@ pub fn in_force(asked: &Asked, rule: KRange, words: &str) -> AirInForce {
 pub fn with_doubt(error: &Estimate, show: Show) -> (Shown, Doubt) {
     let unit = show.small_unit(error.worst());
     let half = error.half();
-    let text = |si: f64| show.small_in(&unit, si, half).text;
+    let text = |si: f64| show.small_in(unit, si, half).text;
     let range = if error.lopsided() {
         format!("from {} to {}", text(error.bias - error.below), text(error.bias + error.above))
     } else {
         format!("± {}", text(half))
     };
     let grain = if half > 0.0 { half.min(error.bias.abs().max(half / 10.0)) } else { error.bias / 1000.0 };
-    (show.small_in(&unit, error.bias, grain), Doubt { value: half, text: range })
+    (show.small_in(unit, error.bias, grain), Doubt { value: half, text: range })
 }
 
 /// Which k is in force.
@@ -295,7 +295,7 @@ pub fn doubt_k(asked: &Asked, answer: &mut Answer) {
         None
     };
     let Some((symbol, label, question)) = meant else { return };
-    let unit: Option<Unit> = Quantity::Refraction.unit(symbol);
+    let unit: Option<&Unit> = Quantity::Refraction.unit(symbol);
     let Some(converted) = unit.and_then(|u| u.to_si(k)) else { return };
     let text = asked.text(&K).to_owned();
     let fix = |label: String, unit| Fix { label, field: K.name, cell: None, text: text.clone(), unit };

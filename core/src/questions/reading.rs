@@ -197,7 +197,7 @@ fn results(asked: &Asked, worth: &Worth, corrected: f64, show: Show, answer: &mu
     let (shown, doubt) = site::with_doubt(combined, show);
     let unit = show.small_unit(combined.worst());
     let fine =
-        |si: f64| show.small_in(&unit, si, if doubt.value > 0.0 { doubt.value.min(si.abs()) } else { si / 1000.0 });
+        |si: f64| show.small_in(unit, si, if doubt.value > 0.0 { doubt.value.min(si.abs()) } else { si / 1000.0 });
     let words = |text: &str| Shown { text: text.to_owned(), unit: "" };
     let about = Doubt { value: combined.half(), text: format!("± {}", show.height(combined.half()).text) };
     match asked.choice(&APPLIED) {

@@ -30,7 +30,7 @@ pub fn line(heard: &Heard) -> String {
 fn on_staff(si: f64, unit: &Unit) -> Shown {
     let (unit, least) = match Quantity::Height.unit("m") {
         Some(metre) if unit.symbol.starts_with('m') => (metre, 3),
-        _ => (*unit, 2),
+        _ => (unit, 2),
     };
     let value = unit.from_si(si).unwrap_or(0.0);
     let whole = |digits: &usize| {
@@ -66,7 +66,7 @@ mod tests {
     fn said_of(text: &str, picked: &str) -> String {
         static FIELD: Field = READING;
         match super::super::entered::read(&FIELD, Quantity::Height, System::Metric, text, picked) {
-            Ok(read) => heard(&FIELD, read.si, &read.unit, Show(System::Metric)).map_or(String::new(), |h| line(&h)),
+            Ok(read) => heard(&FIELD, read.si, read.unit, Show(System::Metric)).map_or(String::new(), |h| line(&h)),
             Err((message, fixes)) => {
                 format!("{message} {}", fixes.iter().map(|f| &*f.label).collect::<Vec<_>>().join(", "))
             }

@@ -9,7 +9,7 @@ use crate::question::field::{Field, Kind};
 #[derive(Debug, Clone, PartialEq)]
 pub enum What {
     /// SI value, and the unit it was read in.
-    Number(f64, Unit),
+    Number(f64, &'static Unit),
     /// Value of an option.
     Choice(&'static str),
     /// Words.
@@ -54,7 +54,7 @@ pub fn take(field: &'static Field, system: System, text: &str, picked: &str) -> 
     match field.kind {
         Kind::Number { quantity, .. } => {
             let Entered { number, unit, bare, si } = entered::read(field, quantity, system, text, picked)?;
-            let also = number.also.as_ref().filter(|also| entered::fits(field, &unit, also)).map(|also| Fix {
+            let also = number.also.as_ref().filter(|also| entered::fits(field, unit, also)).map(|also| Fix {
                 label: format!("It is {also}"),
                 field: field.name,
                 cell: None,
@@ -62,7 +62,7 @@ pub fn take(field: &'static Field, system: System, text: &str, picked: &str) -> 
                 unit: unit.symbol,
             });
             // A bare k stays bare: whether it is k or m must be asked each time it is read.
-            let kept = entered::written(&number, &unit, bare && quantity == Quantity::Refraction);
+            let kept = entered::written(&number, unit, bare && quantity == Quantity::Refraction);
             Ok(Taken { what: What::Number(si, unit), text: number.text, bare, kept, also })
         }
         Kind::Choice { .. } => match choose(field, text) {

@@ -12,7 +12,7 @@ pub struct Entered {
     /// Its digits.
     pub number: Number,
     /// The unit it has.
-    pub unit: Unit,
+    pub unit: &'static Unit,
     /// No unit was entered with it.
     pub bare: bool,
     /// What it comes to.
@@ -35,10 +35,10 @@ pub fn read(
     let bare = unit.is_empty();
     let found = if bare { Some(usual) } else { quantity.unit(unit) };
     let (number, unit) = match found {
-        Some(unit) => match staff(field, &digits, &unit).filter(|_| own.is_empty()) {
+        Some(unit) => match staff(field, &digits, unit).filter(|_| own.is_empty()) {
             Some((number, true)) => (number, unit),
-            Some((number, false)) => return Err(bounced(field, text, &number, &unit)),
-            None => (number::number(&digits).map_err(|e| unreadable(field, text, &unit, e))?, unit),
+            Some((number, false)) => return Err(bounced(field, text, &number, unit)),
+            None => (number::number(&digits).map_err(|e| unreadable(field, text, unit, e))?, unit),
         },
         None => of_degrees(field, quantity, text).unwrap_or_else(|| Err(no_unit(field, quantity, &digits, unit)))?,
     };
@@ -48,7 +48,7 @@ pub fn read(
             format!("{} cannot be {} {}: there is no such value.", field.label, clip(&number.text), unit.symbol);
         (message, vec![])
     })?;
-    in_range(field, quantity, system, &number, &unit, si)?;
+    in_range(field, quantity, system, &number, unit, si)?;
     Ok(Entered { number, unit, bare, si })
 }
 
@@ -132,19 +132,19 @@ fn split(quantity: Quantity, text: &str) -> (String, String) {
 }
 
 /// `1:20` or `1/20` without a unit is a slope of one in twenty, not of a twentieth of a percent.
-fn slope_as_ratio(quantity: Quantity, number: &Number, bare: bool) -> Option<Unit> {
+fn slope_as_ratio(quantity: Quantity, number: &Number, bare: bool) -> Option<&'static Unit> {
     (quantity == Quantity::Gradient && bare && number.text.contains('/')).then(|| quantity.unit("m/m"))?
 }
 
 /// Degrees, minutes and seconds, for a quantity that is an angle in one of its units.
-fn of_degrees(field: &'static Field, quantity: Quantity, text: &str) -> Option<Result<(Number, Unit), Wrong>> {
+fn of_degrees(field: &'static Field, quantity: Quantity, text: &str) -> Option<Result<(Number, &'static Unit), Wrong>> {
     let read = number::sexagesimal(text)?;
     if let Some(unit) = quantity.unit("°") {
-        return Some(read.map(|n| (n, unit)).map_err(|e| unreadable(field, text, &unit, e)));
+        return Some(read.map(|n| (n, unit)).map_err(|e| unreadable(field, text, unit, e)));
     }
     if let Some(unit) = quantity.unit("″") {
         let seconds = |n: Number| (Number { value: n.value * 3600.0, ..n }, unit);
-        return Some(read.map(seconds).map_err(|e| unreadable(field, text, &unit, e)));
+        return Some(read.map(seconds).map_err(|e| unreadable(field, text, unit, e)));
     }
     let message = format!("{}: feet and inches are not read. Enter decimal feet, as in 5.5 ft.", field.label);
     Some(Err((message, vec![])))
@@ -186,7 +186,7 @@ fn no_unit(field: &'static Field, quantity: Quantity, digits: &str, unit: &str) 
         );
     }
     let symbols: Vec<&str> = quantity.info().units.iter().map(|u| u.symbol).collect();
-    let fixes = symbols.iter().filter_map(|s| quantity.unit(s)).take(2).map(|u| fix(field, digits, &u)).collect();
+    let fixes = symbols.iter().filter_map(|s| quantity.unit(s)).take(2).map(|u| fix(field, digits, u)).collect();
     let message = format!("“{}” is no unit of {}. Use {}.", clip(unit), the(field.label), listed(&symbols));
     (message, if number::number(digits).is_ok() { fixes } else { vec![] })
 }
@@ -229,7 +229,7 @@ fn in_range(
     }
     let others = quantity.info().units.iter().filter_map(|u| quantity.unit(u.symbol));
     let others = others.filter(|u| u.symbol != unit.symbol && !number.sexagesimal && fits(field, u, &number.text));
-    fixes.extend(others.take(2).map(|u| fix(field, &number.text, &u)));
+    fixes.extend(others.take(2).map(|u| fix(field, &number.text, u)));
     Err((message, fixes))
 }
 

@@ -23,7 +23,7 @@ impl Digits {
                 places += 1;
             }
         }
-        Digits { unit, places, show }
+        Digits { unit: *unit, places, show }
     }
     /// A level or a reading, without its unit.
     pub fn text(self, si: f64) -> String {

@@ -138,15 +138,15 @@ impl Case {
     }
 
     /// The unit that suits a size.
-    pub fn unit(&self, what: What, si: f64) -> Unit {
+    pub fn unit(&self, what: What, si: f64) -> &'static Unit {
         let usual = Quantity::Distance.usual(self.show.0);
         let long = if usual.symbol == "m" { "km" } else { "mi" };
         let long = Quantity::Distance.unit(long).filter(|u| u.from_si(si).is_some_and(|n| n >= 10.0));
         match what {
-            What::Dip => ARC_MINUTE,
+            What::Dip => &ARC_MINUTE,
             What::Hidden if si > 0.0 && si < 0.1 => Quantity::SmallLength.usual(self.show.0),
             What::Hidden => usual,
-            _ if self.nautical => NAUTICAL_MILE,
+            _ if self.nautical => &NAUTICAL_MILE,
             _ => long.unwrap_or(usual),
         }
     }

@@ -55,7 +55,7 @@ pub fn draw(case: &Case) -> Option<Figure> {
         marks.push(Mark::Span { x: x(place), from: y(foot), to: y(0.0), label: words(What::Hidden)? });
     }
     let (far, tall) = (case.unit(What::Horizon, end), case.unit(What::Hidden, high - low));
-    let axis = |unit: Unit, name: &str, low, high| {
+    let axis = |unit: &Unit, name: &str, low, high| {
         Some(axis(format!("{name}, {}", unit.symbol), unit.from_si(low)?, unit.from_si(high)?))
     };
     Some(Figure {

@@ -72,10 +72,10 @@ fn hint(asked: &Asked, doubt_rules: bool) -> &'static str {
 pub fn comes_out(error: &Estimate, show: Show) -> String {
     let (unit, half) = (show.small_unit(error.worst()), error.half());
     let range = if error.lopsided() {
-        let end = |si: f64| side(show, &unit, si, half);
+        let end = |si: f64| side(show, unit, si, half);
         format!("{} to {}", end(error.bias - error.below), end(error.bias + error.above))
     } else {
-        format!("± {}", show.small_in(&unit, half, half))
+        format!("± {}", show.small_in(unit, half, half))
     };
     format!("{} ({range})", high_or_low(error, show))
 }
@@ -86,7 +86,7 @@ pub fn high_or_low(error: &Estimate, show: Show) -> String {
         return "true".to_owned();
     }
     let grain = if error.half() > 0.0 { error.half() } else { error.bias / 10.0 };
-    side(show, &show.small_unit(error.worst()), error.bias, grain)
+    side(show, show.small_unit(error.worst()), error.bias, grain)
 }
 
 fn side(show: Show, unit: &Unit, si: f64, grain: f64) -> String {

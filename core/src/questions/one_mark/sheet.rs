@@ -92,7 +92,7 @@ fn levels(case: &Case, show: Show) -> Table {
 fn skies(case: &Case, show: Show) -> Table {
     let unit = show.small_unit(0.0);
     let cell = |e: &Estimate| {
-        let text = |si: f64| show.small_in(&unit, si, if e.half() > 0.0 { e.half() } else { si }).text;
+        let text = |si: f64| show.small_in(unit, si, if e.half() > 0.0 { e.half() } else { si }).text;
         match e.lopsided() {
             true => format!("{}: {} to {}", text(e.bias), text(e.bias - e.below), text(e.bias + e.above)),
             false => format!("{} ± {}", text(e.bias), text(e.half())),
@@ -119,7 +119,7 @@ fn drawn(case: &Case, show: Show) -> Table {
         let e = &p.error;
         let ends = [e.bias, e.bias - e.below, e.bias + e.above];
         let mut row = vec![place(case, i, show)];
-        row.extend(ends.map(|si| show.small_in(&unit, si, if e.half() > 0.0 { e.half() } else { si }).text));
+        row.extend(ends.map(|si| show.small_in(unit, si, if e.half() > 0.0 { e.half() } else { si }).text));
         row
     });
     let columns = ["Work at", "Too high", "From", "To"].iter().enumerate();

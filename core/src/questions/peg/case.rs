@@ -123,11 +123,11 @@ fn blind(asked: &Asked, [a, b, c, d]: [f64; 4]) -> String {
 
 /// A tilt in mm/m, to the digits that `grain` leaves it.
 pub fn tilt(show: Show, si: f64, grain: f64) -> Shown {
-    show.small_in(&Quantity::Collimation.usual(show.0), si, grain)
+    show.small_in(Quantity::Collimation.usual(show.0), si, grain)
 }
 
 /// A tilt as an angle.
 pub fn seconds(show: Show, si: f64, grain: f64) -> Shown {
     let unit = Quantity::Collimation.unit("″").unwrap_or(Quantity::Collimation.usual(show.0));
-    show.small_in(&unit, si, grain)
+    show.small_in(unit, si, grain)
 }

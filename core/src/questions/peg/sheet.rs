@@ -141,7 +141,7 @@ fn readings(case: &Case, show: Show) -> Table {
             name.to_owned(),
             show.distance(shot.distance.0, Round::Near).to_string(),
             show.height(shot.reading.0).text,
-            show.small_in(&small, bent, 0.0001).text,
+            show.small_in(small, bent, 0.0001).text,
             show.height(reading_to_set(shot, Tilt(case.error.bias)).0).text,
         ]
     };

@@ -122,7 +122,7 @@ fn terms(limits: &[Limit], show: Show) -> Table {
 
 fn contributions(parts: &[Part; 5], error: Estimate, show: Show) -> Table {
     let unit = show.small_unit(error.worst());
-    let cell = |si: f64, grain: f64| show.small_in(&unit, si, grain.max(error.half() / 100.0)).text;
+    let cell = |si: f64, grain: f64| show.small_in(unit, si, grain.max(error.half() / 100.0)).text;
     let row = |name: &str, e: &Estimate| {
         let grain = if e.half() > 0.0 { e.half() } else { e.bias.abs() };
         vec![name.to_owned(), cell(e.bias, grain), cell(e.below, grain), cell(e.above, grain)]
