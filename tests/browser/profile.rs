@@ -70,18 +70,23 @@ fn hand_over(stage: &Stage, text: &str) -> Result<()> {
 fn chosen(stage: &Stage) -> Result<()> {
     let browser = stage.browser;
     let _server = open(stage, &[])?;
-    let in_sight =
-        |name: &str| browser.js(&format!("return document.querySelector('[name={name}]').getClientRects().length > 0"));
-    let seen = || -> Result<_> { Ok([in_sight("distance")?, in_sight("latitude_a")?, in_sight("easting_a")?]) };
+    // A slow answer, and what hangs on it, waits for a pause of the keys.
+    let sees = |wanted: [bool; 3]| {
+        browser.wait(&format!(
+            "JSON.stringify(['distance', 'latitude_a', 'easting_a'].map((name) =>
+            document.querySelector(`[name=${{name}}]`).getClientRects().length > 0)) === '{}'",
+            json!(wanted)
+        ))
+    };
     let columns = "return [...document.querySelectorAll('.row.open .cell:not([hidden]) input')].length";
     let by_position = browser.js(columns)?;
-    same(seen()?, [json!(false), json!(true), json!(false)])?;
+    sees([false, true, false])?;
     browser.js("document.querySelector('[name=positions][value=given]').click(); return 0;")?;
-    same(seen()?, [json!(true), json!(false), json!(false)])?;
+    sees([true, false, false])?;
     let by_distance = browser.js(columns)?;
     same(by_position.as_u64(), by_distance.as_u64().map(|n| n + 2))?;
     browser.js("document.querySelector('[name=positions][value=grid]').click(); return 0;")?;
-    same(seen()?, [json!(false), json!(false), json!(true)])?;
+    sees([false, false, true])?;
     // What was entered before comes back with the choice.
     browser.js("document.querySelector('[name=positions][value=latlon]').click(); return 0;")?;
     same(browser.js("return document.querySelector('[name=latitude_a]').value")?, json!("52.1234"))

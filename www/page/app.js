@@ -1,7 +1,7 @@
 // Start, addresses, and the entry of the question in view. What is asked and answered comes from the core alone.
 import init, { ask, catalogue } from "./core.js";
 import { showAll, showAnswer, showEntered, showStanding, spoken } from "./answer.js";
-import { byId, copy, download, fill, say, within } from "./dom.js";
+import { byId, copy, download, fill, say, steady, within } from "./dom.js";
 import { columnsOf, infoOf, isAsked, namesIn, unitName, unitsOf, usualUnit } from "./field.js";
 import { buildForm } from "./form.js";
 import { hint, startHint } from "./install.js";
@@ -155,8 +155,11 @@ function tell() {
   const typing = document.activeElement?.getAttribute("name") ?? ""; // nothing is wrong yet with what is being typed
   const shown = problems.filter(({ field, cell }) =>
     (field !== typing || visited.has(typing)) && (!cell || form?.ripe(field, cell)));
-  form?.tell(answer.read, shown, answer.notes.filter((note) => note.fixes.length > 0), answer.booked);
-  showAnswer(question, answer, shown, { fix, take, focus: (name, cell) => form?.focus(name, cell) });
+  const of = question;
+  steady(byId("form"), () => {
+    form?.tell(answer.read, shown, answer.notes.filter((note) => note.fixes.length > 0), answer.booked);
+    showAnswer(of, answer, shown, { fix, take, focus: (name, cell) => form?.focus(name, cell) });
+  });
   for (const key of /** @type {NodeListOf<HTMLButtonElement>} */ (byId("form").querySelectorAll("[data-travel]"))) {
     key.disabled = own()[key.dataset.travel === "redo" ? "redo" : "undo"].length === 0;
   }

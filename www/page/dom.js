@@ -65,6 +65,34 @@ export function say(text, keys = {}) {
   host.append(message);
 }
 
+const HELD_MS = 1000;
+
+/** Brings an element into view and keeps it there while what lies above takes its height, until the person moves on.
+ * @param {HTMLElement} element */
+export function hold(element) {
+  const end = performance.now() + HELD_MS;
+  let free = false;
+  for (const event of ["pointerdown", "keydown", "wheel"]) {
+    addEventListener(event, () => { free = true; }, { once: true, passive: true });
+  }
+  const show = () => {
+    if (free) return;
+    element.scrollIntoView({ block: "center" });
+    if (performance.now() < end) requestAnimationFrame(show);
+  };
+  show();
+}
+
+/** Makes a change and keeps in its place what has the focus: WebKit lets it go when what lies above changes its height.
+ * @param {HTMLElement} inside @param {() => void} change */
+export function steady(inside, change) {
+  const at = inside.contains(document.activeElement) ? document.activeElement : null;
+  const before = at?.getBoundingClientRect().top ?? 0;
+  change();
+  const moved = (at?.isConnected ? at.getBoundingClientRect().top : before) - before;
+  if (moved !== 0) scrollBy(0, moved);
+}
+
 /** Hands a text to the person as a file. @param {string} name @param {string} text @param {string} [type] */
 export function download(name, text, type = "text/plain") {
   const link = document.createElement("a");

@@ -3,7 +3,7 @@
 import { startBooked } from "./booked.js";
 import { startBringing } from "./bring.js";
 import { closedPattern, makeCell, makeHead, showAsked, showWrong, SPARE } from "./cell.js";
-import { byId, copy, download, fill, within } from "./dom.js";
+import { byId, copy, download, fill, hold, within } from "./dom.js";
 import { dress, helpOf, isAsked, usualUnit } from "./field.js";
 import {
   cellsOf, changedBetween, columnsOfTable, heading, isBlank, isStruck, lineOf, linesOf, optionOf, separated, shown,
@@ -463,9 +463,7 @@ export function tableBox(field, around) {
         openRow(Math.min(at, lines.length));
         booked?.ask(text, keys);
         const row = item(open?.at ?? at);
-        const show = () => (row?.querySelector(".ask:not([hidden])") ?? row)?.scrollIntoView({ block: "center" });
-        show();
-        requestAnimationFrame(show); // rows that come into view take their own height
+        if (row) hold(/** @type {HTMLElement} */ (row.querySelector(".ask:not([hidden])") ?? row));
       },
       rows(rows) { booked?.tell(list, rows, ripe); },
       tell(problems, read) {
