@@ -413,3 +413,22 @@ fn radii_of_lines_are_those_of_their_azimuth() {
     assert_eq!((value(&mean, "radius"), value(&mean, "length")), (6_371_000.0, 5000.0));
     assert_eq!(Metres(value(&mean, "least_at")), Metres(2000.0));
 }
+
+#[test]
+fn what_does_not_fit_is_said_at_its_row() {
+    // A struck row counts as a line; the third point comes before the second, the fourth lies where the second does, the
+    // last lies beyond B.
+    let profile = "2 km\t90\n~3 km\t95\n6 km\t100\n4 km\t101\n6 km\t99\n14 km\t80";
+    let answer = asked(&[&HEIGHTS, &[("distance", "12 km"), ("profile", profile)]]);
+    let [booked] = &answer.booked[..] else { panic!("{:?}", answer.booked) };
+    let said: Vec<(usize, &str)> =
+        booked.rows.iter().flat_map(|at| at.cautions.iter().map(|c| (at.row, c.text.as_str()))).collect();
+    assert_eq!(
+        said,
+        [
+            (3, "Nearer to A than the row before: put in order."),
+            (4, "At the distance of another point: the higher counts."),
+            (5, "Not between A and B: left out."),
+        ]
+    );
+}

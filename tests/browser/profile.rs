@@ -31,6 +31,7 @@ pub fn run(tally: &mut Tally, stage: &Stage) {
     tally.step("a GPX file comes in with a preview, and one tap takes its points", || file(stage));
     tally.step("a file that means harm is refused in words and takes nothing", || bomb(stage));
     tally.step("what has changed places is exchanged with one tap", || exchanged(stage));
+    tally.step("what does not fit is said at its row", || told(stage));
     tally.step("the picture is read off by touch and by arrow keys to the worst point", || read_off(stage));
 }
 
@@ -125,6 +126,24 @@ fn exchanged(stage: &Stage) -> Result<()> {
     stage.browser.wait("document.querySelector('.row .wrongs button')")?;
     stage.browser.tap(".row .wrongs button")?;
     holds(stage, &[(POINTS, &(right.to_owned() + &rows.join("\n")))]).map(drop)
+}
+
+fn told(stage: &Stage) -> Result<()> {
+    let twice = "latitude\tlongitude\tground\n52.1512\t5.4854\t90\n52.1512\t5.4854\t95\n52.3\t5.9\t80";
+    let _server = open(stage, &[(POINTS, twice)])?;
+    let booked = answer(&[(POINTS, twice)])?.1.booked;
+    let said = booked.first().ok_or("nothing is said at a row")?;
+    check(said.rows.len() == 2, || format!("{said:?}"))?;
+    for at in &said.rows {
+        let texts: Vec<&str> = at.cautions.iter().map(|caution| caution.text.as_str()).collect();
+        stage.browser.wait(&format!(
+            "JSON.stringify([...document.querySelectorAll('.row:nth-child({}) .told')].map((each) => each.textContent))
+            === {}",
+            at.row + 1,
+            json!(json!(texts).to_string())
+        ))?;
+    }
+    Ok(())
 }
 
 fn read_off(stage: &Stage) -> Result<()> {

@@ -24,8 +24,6 @@ export function startBooked(name, columns, around) {
   const ask = within(top, ".ask");
   let saying = 0;
   let said = ""; // waits to be said to those who cannot see it
-  /** @type {WeakMap<Element, string>} */
-  const shown = new WeakMap();
   /** @param {number} column */
   const aidOf = (column) => columns[column]?.field.aid;
 
@@ -89,25 +87,31 @@ export function startBooked(name, columns, around) {
       said = text;
       speak();
     },
-    /** Headings and cautions at their rows. @param {HTMLElement} list @param {readonly AtRow[]} rows
-     * @param {(cell: import("./core.js").Cell) => boolean} ripe not of what is just being typed */
-    tell(list, rows, ripe) {
-      const items = [...list.children];
-      const wanted = new Map(rows.map((each) => [items[each.row], each]));
-      for (const li of new Set([...list.querySelectorAll(":scope > .said"), ...wanted.keys()])) {
-        if (!li) continue;
-        const { row = 0, head = "", cautions: all = [] } = wanted.get(li) ?? {};
-        const cautions = all.filter(({ column }) => ripe({ row, column }));
-        const words = JSON.stringify([head, cautions]);
-        if (shown.get(li) === words) continue;
-        shown.set(li, words);
-        for (const old of li.querySelectorAll(":scope > .lead, :scope > .told")) old.remove();
-        li.classList.toggle("begins", head !== "");
-        li.classList.toggle("said", head !== "" || cautions.length > 0);
-        if (head) li.prepend(line("lead", head));
-        li.querySelector(".brief")?.after(...cautions.map(({ text }) => line("told", text)));
-      }
-    },
+  };
+}
+
+/** Says headings and cautions at the rows of a table. */
+export function startTold() {
+  /** @type {WeakMap<Element, string>} */
+  const shown = new WeakMap();
+  /** @param {HTMLElement} list @param {readonly AtRow[]} rows
+   * @param {(cell: import("./core.js").Cell) => boolean} ripe not of what is just being typed */
+  return (list, rows, ripe) => {
+    const items = [...list.children];
+    const wanted = new Map(rows.map((each) => [items[each.row], each]));
+    for (const li of new Set([...list.querySelectorAll(":scope > .said"), ...wanted.keys()])) {
+      if (!li) continue;
+      const { row = 0, head = "", cautions: all = [] } = wanted.get(li) ?? {};
+      const cautions = all.filter(({ column }) => ripe({ row, column }));
+      const words = JSON.stringify([head, cautions]);
+      if (shown.get(li) === words) continue;
+      shown.set(li, words);
+      for (const old of li.querySelectorAll(":scope > .lead, :scope > .told")) old.remove();
+      li.classList.toggle("begins", head !== "");
+      li.classList.toggle("said", head !== "" || cautions.length > 0);
+      if (head) li.prepend(line("lead", head));
+      li.querySelector(".brief")?.after(...cautions.map(({ text }) => line("told", text)));
+    }
   };
 }
 

@@ -1,6 +1,6 @@
 // A table field: one row is open and has boxes, the others are lines to read, so that thousands of them cost little. A
 // phone shows cards, a wide screen a grid. Every act makes a new text, and `write` puts only what differs on the page.
-import { startBooked } from "./booked.js";
+import { startBooked, startTold } from "./booked.js";
 import { startBringing } from "./bring.js";
 import { closedPattern, makeCell, makeHead, showAsked, showWrong, SPARE } from "./cell.js";
 import { byId, copy, download, fill, hold, within } from "./dom.js";
@@ -67,6 +67,7 @@ export function tableBox(field, around) {
     openRow(at);
   }
   const booked = field.kind.booking ? startBooked(name, columns, around) : undefined;
+  const told = startTold();
 
   /** @param {number} at */
   const item = (at) => /** @type {HTMLElement | undefined} */ (list.children[at]);
@@ -465,7 +466,7 @@ export function tableBox(field, around) {
         const row = item(open?.at ?? at);
         if (row) hold(/** @type {HTMLElement} */ (row.querySelector(".ask:not([hidden])") ?? row));
       },
-      rows(rows) { booked?.tell(list, rows, ripe); },
+      rows(rows) { told(list, rows, ripe); },
       tell(problems, read) {
         const asked = columns.map((column) => isAsked(column.field, read));
         if (columns.some((column, at) => column.asked !== asked[at])) {

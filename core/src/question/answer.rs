@@ -33,7 +33,7 @@ pub struct Answer {
     pub sources: Vec<&'static str>,
     /// How each field was read.
     pub read: Vec<Read>,
-    /// What belongs to single rows of tables that are booked row by row.
+    /// What belongs to single rows of tables.
     pub booked: Vec<Booked>,
     /// The cell in hand, said back. The entry names it as `TABLE.at`: the column, from 0, of the table's first row.
     #[serde(skip_serializing_if = "Option::is_none")]
@@ -209,7 +209,7 @@ pub struct Read {
     pub assumed: bool,
 }
 
-/// A table that is booked row by row: where it goes on, and what is to be said at its rows.
+/// What is to be said at the rows of a table and, of one that is booked row by row, where it goes on.
 #[derive(Debug, Clone, PartialEq, Default, Serialize)]
 #[cfg_attr(feature = "ts", derive(tsify::Tsify))]
 pub struct Booked {

@@ -6,13 +6,40 @@ use crate::order::sort;
 use crate::place::Foot;
 use crate::quantity::Metres;
 use crate::quantity::show::Round;
-use crate::question::answer::{Cell, Fix, Problem};
+use crate::question::answer::{AtCell, AtRow, Booked, Cell, Fix, Problem};
 use crate::question::asked::Row;
 use crate::question::field::Field;
 use crate::question::{Answer, Asked};
 
 /// Rows that are told one by one; more are counted.
 const TOLD: usize = 8;
+
+/// Rows at which something is said; beyond, the notes alone tell.
+const AT_ROWS: usize = 200;
+
+/// What is said at single rows.
+#[derive(Default)]
+struct Said(Vec<(usize, AtCell)>);
+
+impl Said {
+    /// `rows` as the page counts them.
+    fn at(&mut self, rows: &[usize], text: &str) {
+        let room = AT_ROWS.saturating_sub(self.0.len());
+        let cell = || AtCell { column: 0, text: text.to_owned() };
+        self.0.extend(rows.iter().take(room).map(|row| (row - 1, cell())));
+    }
+    fn into(mut self) -> Booked {
+        sort(&mut self.0, |said| [said.0 as f64, 0.0]);
+        let mut rows: Vec<AtRow> = vec![];
+        for (row, cell) in self.0 {
+            match rows.last_mut().filter(|last| last.row == row) {
+                Some(last) => last.cautions.push(cell),
+                None => rows.push(AtRow { row, cautions: vec![cell], ..AtRow::default() }),
+            }
+        }
+        Booked { field: PROFILE.name, rows, ..Booked::default() }
+    }
+}
 
 /// A point and its distance from A.
 pub struct Spot<'a> {
@@ -50,10 +77,12 @@ pub fn spots<'a>(asked: &'a Asked, course: &Course, answer: &mut Answer) -> Opti
         answer.not_known(first.message.clone());
         return None;
     }
-    say_aside(asked, &aside, answer);
-    say_order(&spots, answer);
-    spots = say_outside(spots, course.s, answer);
-    say_gaps(asked, &spots, course.s, answer);
+    let mut said = Said::default();
+    say_aside(asked, &aside, &mut said, answer);
+    say_order(&spots, &mut said, answer);
+    spots = say_outside(spots, course.s, &mut said, answer);
+    say_gaps(asked, &spots, course.s, &mut said, answer);
+    answer.booked.push(said.into());
     Some(spots)
 }
 
@@ -107,9 +136,12 @@ fn exchange(asked: &Asked, first: &Row, turned: &[&Row]) -> Problem {
     Problem { field: PROFILE.name, cell, message, fixes: vec![fix] }
 }
 
-fn say_aside(asked: &Asked, aside: &[(usize, f64)], answer: &mut Answer) {
+fn say_aside(asked: &Asked, aside: &[(usize, f64)], said: &mut Said, answer: &mut Answer) {
     let Some(farthest) = aside.iter().copied().reduce(|a, b| if b.1.abs() > a.1.abs() { b } else { a }) else { return };
     let distance = |si: f64| asked.show().distance(si, Round::Near);
+    for (row, off) in aside {
+        said.at(&[*row], &format!("{} off the line: left out.", distance(off.abs())));
+    }
     answer.caution(format!(
         "More than {} off the line, and left out: {}. Point {} lies {} to the {}.",
         distance(asked.must(&ASIDE)),
@@ -120,31 +152,34 @@ fn say_aside(asked: &Asked, aside: &[(usize, f64)], answer: &mut Answer) {
     ));
 }
 
-fn say_order(spots: &[Spot], answer: &mut Answer) {
+fn say_order(spots: &[Spot], said: &mut Said, answer: &mut Answer) {
     let pairs = spots.iter().zip(spots.iter().skip(1));
     let back: Vec<usize> = pairs.filter(|(one, next)| next.at < one.at).map(|(_, next)| next.number()).collect();
     if !back.is_empty() {
+        said.at(&back, "Nearer to A than the row before: put in order.");
         answer.note(format!("Nearer to A than the row before: {}. The points were put in order.", named(&back)));
     }
 }
 
 /// Those between the stations.
-fn say_outside<'a>(spots: Vec<Spot<'a>>, s: f64, answer: &mut Answer) -> Vec<Spot<'a>> {
+fn say_outside<'a>(spots: Vec<Spot<'a>>, s: f64, said: &mut Said, answer: &mut Answer) -> Vec<Spot<'a>> {
     let (inside, outside): (Vec<_>, Vec<_>) = spots.into_iter().partition(|spot| spot.at > 0.0 && spot.at < s);
     if !outside.is_empty() {
         let rows: Vec<usize> = outside.iter().map(Spot::number).collect();
+        said.at(&rows, "Not between A and B: left out.");
         answer.caution(format!("Not between A and B, and left out: {}.", named(&rows)));
     }
     inside
 }
 
 /// Points at one distance, and ends of the line of which nothing is known.
-fn say_gaps(asked: &Asked, spots: &[Spot], s: f64, answer: &mut Answer) {
+fn say_gaps(asked: &Asked, spots: &[Spot], s: f64, said: &mut Said, answer: &mut Answer) {
     let mut rows: Vec<(f64, usize)> = spots.iter().map(|spot| (spot.at, spot.number())).collect();
     sort(&mut rows, |row| [row.0, row.1 as f64]);
     let pairs = rows.iter().zip(rows.iter().skip(1));
     let same: Vec<usize> = pairs.filter(|(one, other)| one.0 == other.0).map(|(_, other)| other.1).collect();
     if !same.is_empty() {
+        said.at(&same, "At the distance of another point: the higher counts.");
         answer.caution(format!("At the same distance as another point: {}. The higher counts.", named(&same)));
     }
     if let [first, ..] = rows[..]
