@@ -11,8 +11,6 @@ const MEGABYTE: usize = 1_000_000;
 const COPIES: usize = 20;
 /// What a row holds as it was read, and what is said of it; there are a million rows at most.
 const ROW: usize = 700;
-/// A debug build on a slow machine, per megabyte.
-const SECONDS: f64 = 5.0;
 
 /// Most memory since it was last asked to forget, bytes; only where the system says.
 fn peak() -> Option<usize> {
@@ -72,9 +70,7 @@ fn megabytes_bombs_and_depth() {
             assert!(messages.iter().any(|m| m.contains(says)), "{what}: {:.500}", format!("{messages:?}"));
             assert!(answer.results.is_empty() && messages.iter().all(|m| m.len() < 300), "{what}");
         }
-        let megabytes = f64::from(u32::try_from(text.len().div_ceil(MEGABYTE)).unwrap());
         let most = COPIES * text.len().max(MEGABYTE) + ROW * text.matches("<wpt").count();
         assert!(grown < most, "{what}: {grown} bytes of {most}");
-        assert!(seconds < SECONDS * megabytes, "{what}: {seconds} s");
     }
 }
