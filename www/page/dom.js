@@ -89,8 +89,12 @@ export function steady(inside, change) {
   const at = inside.contains(document.activeElement) ? document.activeElement : null;
   const before = at?.getBoundingClientRect().top ?? 0;
   change();
-  const moved = (at?.isConnected ? at.getBoundingClientRect().top : before) - before;
-  if (moved !== 0) scrollBy(0, moved);
+  const keep = () => {
+    const moved = at && at === document.activeElement ? at.getBoundingClientRect().top - before : 0;
+    if (moved !== 0) scrollBy(0, moved);
+  };
+  keep();
+  if (before > 0 && before < innerHeight) requestAnimationFrame(keep); // some heights follow a frame late
 }
 
 /** Hands a text to the person as a file. @param {string} name @param {string} text @param {string} [type] */
